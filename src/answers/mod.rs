@@ -1,0 +1,5 @@
+//! Decisions drawn from runs: one file a question.
+
+mod run;
+
+pub use run::*;

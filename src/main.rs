@@ -1,0 +1,2 @@
+//! The `soakdown` program.
+fn main() {}

@@ -1,0 +1,148 @@
+//! What is planned, as checked numbers: stations of layered walls, the engine's profile, the surroundings, the questions.
+//!
+//! Constructors take `uom` quantities, so that a caller can't pass millimetres for metres or a difference for a temperature; inside, every field
+//! is a plain SI `f64`. The model knows no file, no solver and no time step.
+
+mod error;
+mod faces;
+mod layer;
+mod material;
+mod profile;
+mod question;
+mod si;
+mod station;
+mod table;
+
+pub use error::ModelError;
+pub use faces::{Convection, Coolant, CoolantPhases, Heating, HeatingModel, Idle, LogRows, Losses, OuterFace, Outside, Purge, Surroundings};
+pub use layer::{Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
+pub use material::{Material, MaterialValues};
+pub use profile::{Phase, PhaseKind, Profile};
+pub use question::{Allowance, Place, Wait};
+pub use si::*;
+pub use station::{Probe, Shape, Station, StationValues};
+pub use table::Table;
+
+/// One planning question, ready to be run: everything that the case file says, checked.
+#[derive(Clone, Debug)]
+pub struct Model {
+    /// The case's title.
+    pub(crate) title: String,
+    /// Air, surfaces, pressure, wind and sun around every station.
+    pub(crate) surroundings: Surroundings,
+    /// Uniform temperature of every wall at time 0.
+    pub(crate) start: Kelvin,
+    /// What the engine does, phase by phase.
+    pub(crate) profile: Profile,
+    /// The wall sections, in file order; at least one.
+    pub(crate) stations: Vec<Station>,
+    /// The cool-down questions, each at one place of one station.
+    pub(crate) waits: Vec<Wait>,
+    /// What is taken off every limit and put on every heating.
+    pub(crate) allowance: Allowance,
+    /// The promised accuracy of temperatures.
+    pub(crate) tolerance: KelvinDifference,
+}
+
+/// The parts of a [`Model`], for [`Model::new`].
+#[derive(Clone, Debug)]
+pub struct ModelParts {
+    /// The case's title.
+    pub title: String,
+    /// Air, surfaces, pressure, wind and sun.
+    pub surroundings: Surroundings,
+    /// Uniform temperature of every wall at time 0.
+    pub start: uom::si::f64::ThermodynamicTemperature,
+    /// What the engine does.
+    pub profile: Profile,
+    /// The wall sections.
+    pub stations: Vec<Station>,
+    /// The cool-down questions.
+    pub waits: Vec<Wait>,
+    /// What is taken off limits and put on heating.
+    pub allowance: Allowance,
+    /// The promised accuracy; 0.05 K unless the case says otherwise.
+    pub tolerance: uom::si::f64::TemperatureInterval,
+}
+
+impl Model {
+    /// Puts a model together.
+    ///
+    /// # Errors
+    /// When there is no station, two have one name, the start or the tolerance is not above zero, a wait names a place that its station
+    /// does not have, or a burn meets a station without heating.
+    pub fn new(parts: ModelParts) -> Result<Self, ModelError> {
+        if parts.stations.is_empty() {
+            return Err(ModelError::Missing { what: "a station" });
+        }
+        ModelError::above_zero("start temperature", parts.start.value)?;
+        ModelError::above_zero("tolerance", parts.tolerance.value)?;
+        for (index, station) in parts.stations.iter().enumerate() {
+            if parts.stations[..index].iter().any(|earlier| earlier.name == station.name) {
+                return Err(ModelError::Repeated { name: station.name.clone() });
+            }
+            if station.heating.is_none() && parts.profile.last_burn().is_some() {
+                return Err(ModelError::Missing {
+                    what: "heating, while the profile has a burn",
+                });
+            }
+        }
+        for wait in &parts.waits {
+            let known = parts.stations.get(wait.station).is_some_and(|station| station.has(wait.place));
+            if !known {
+                return Err(ModelError::NoSuchPlace { wait: wait.name.clone() });
+            }
+        }
+        Ok(Self {
+            title: parts.title,
+            surroundings: parts.surroundings,
+            start: parts.start.value,
+            profile: parts.profile,
+            stations: parts.stations,
+            waits: parts.waits,
+            allowance: parts.allowance,
+            tolerance: parts.tolerance.value,
+        })
+    }
+
+    /// The case's title.
+    pub fn title(&self) -> &str {
+        &self.title
+    }
+
+    /// The wall sections, in file order.
+    pub fn stations(&self) -> &[Station] {
+        &self.stations
+    }
+
+    /// What the engine does.
+    pub fn profile(&self) -> &Profile {
+        &self.profile
+    }
+
+    /// The cool-down questions.
+    pub fn waits(&self) -> &[Wait] {
+        &self.waits
+    }
+
+    /// Air, surfaces, pressure, wind and sun.
+    pub fn surroundings(&self) -> &Surroundings {
+        &self.surroundings
+    }
+
+    /// What is taken off limits and put on heating.
+    pub fn allowance(&self) -> &Allowance {
+        &self.allowance
+    }
+
+    /// The same model with every heating factor multiplied: the second run by which the allowance judges.
+    pub fn with_heating_times(&self, factor: f64) -> Self {
+        let mut other = self.clone();
+        for station in &mut other.stations {
+            if let Some(heating) = &mut station.heating {
+                heating.factor *= factor;
+            }
+        }
+        other
+    }
+}

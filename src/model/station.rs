@@ -1,0 +1,213 @@
+//! One wall section.
+
+use super::{Heating, Idle, Layer, Metres, ModelError, OuterFace, Place, Resistance, Seconds};
+use uom::si::f64::{Length, Time};
+
+/// How heat spreads through the wall.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Shape {
+    /// Flat: the same area at every depth.
+    Plane,
+    /// Round, heated on the inside.
+    Cylinder {
+        /// Radius of the hot face.
+        inner_radius: Metres,
+    },
+}
+
+impl Shape {
+    /// A round wall of this inner diameter.
+    ///
+    /// # Errors
+    /// When it is not above zero.
+    pub fn cylinder(inner_diameter: Length) -> Result<Self, ModelError> {
+        Ok(Self::Cylinder {
+            inner_radius: ModelError::above_zero("inner diameter", inner_diameter.value)? / 2.0,
+        })
+    }
+
+    /// Area at a depth, m, over the area of the hot face.
+    pub fn area_ratio(self, depth: Metres) -> f64 {
+        match self {
+            Self::Plane => 1.0,
+            Self::Cylinder { inner_radius } => (inner_radius + depth) / inner_radius,
+        }
+    }
+
+    /// Volume between two depths, m, per area of the hot face, m.
+    pub fn volume(self, from: Metres, to: Metres) -> Metres {
+        (to - from) * self.area_ratio(0.5 * (from + to))
+    }
+}
+
+/// A thermocouple, or any point of interest.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Probe {
+    pub(crate) name: String,
+    /// Depth from the hot face.
+    pub(crate) depth: Metres,
+    /// The layer whose side it lies on, where the depth is a boundary.
+    pub(crate) layer: usize,
+    /// First-order time constant; 0: it reads the wall at once.
+    pub(crate) lag: Seconds,
+}
+
+/// One wall section: layers from the hot face outwards, and what happens at its faces.
+#[derive(Clone, Debug)]
+pub struct Station {
+    pub(crate) name: String,
+    pub(crate) shape: Shape,
+    pub(crate) layers: Vec<Layer>,
+    /// `None` only where nothing burns.
+    pub(crate) heating: Option<Heating>,
+    pub(crate) idle: Idle,
+    pub(crate) outer: OuterFace,
+    pub(crate) probes: Vec<Probe>,
+}
+
+/// The parts of a [`Station`], for [`Station::new`].
+#[derive(Clone, Debug)]
+pub struct StationValues {
+    /// Its name, unique in the model.
+    pub name: String,
+    /// Flat or round.
+    pub shape: Shape,
+    /// Layers from the hot face outwards; at least one.
+    pub layers: Vec<Layer>,
+    /// The hot face while burning; `None` only where nothing burns.
+    pub heating: Option<Heating>,
+    /// The hot face while the gas is off.
+    pub idle: Idle,
+    /// The outer face.
+    pub outer: OuterFace,
+}
+
+impl Station {
+    /// A wall section without probes.
+    ///
+    /// # Errors
+    /// When it has no layer, two layers share a name, or the outermost layer has a joint.
+    pub fn new(values: StationValues) -> Result<Self, ModelError> {
+        let Some(outermost) = values.layers.last() else {
+            return Err(ModelError::Missing { what: "a layer" });
+        };
+        if outermost.joint.is_some() {
+            return Err(ModelError::Missing {
+                what: "a layer outside the last joint",
+            });
+        }
+        for (index, layer) in values.layers.iter().enumerate() {
+            if values.layers[..index].iter().any(|earlier| earlier.name == layer.name) {
+                return Err(ModelError::Repeated { name: layer.name.clone() });
+            }
+        }
+        let StationValues {
+            name,
+            shape,
+            layers,
+            heating,
+            idle,
+            outer,
+        } = values;
+        Ok(Self {
+            name,
+            shape,
+            layers,
+            heating,
+            idle,
+            outer,
+            probes: Vec::new(),
+        })
+    }
+
+    /// The same station with one more probe, at a depth from the hot face. On a boundary it lies on the hot side, unless `layer` says otherwise.
+    ///
+    /// # Errors
+    /// When the depth lies outside the wall or the named layer, or the lag is negative.
+    pub fn with_probe(mut self, name: impl Into<String>, depth: Length, layer: Option<usize>, lag: Time) -> Result<Self, ModelError> {
+        let name = name.into();
+        let depth = depth.value;
+        let outside = || ModelError::OutsideTheWall { probe: name.clone(), depth };
+        // A micrometre of grace: depths are sums of thicknesses written in other units.
+        let grace = 1e-6 * self.thickness();
+        let boundaries = self.boundaries();
+        let holds = |index: usize| depth >= boundaries[index] - grace && depth <= boundaries[index + 1] + grace;
+        let layer = match layer {
+            Some(index) if index < self.layers.len() && holds(index) => index,
+            Some(_) => return Err(outside()),
+            None => (0..self.layers.len()).find(|&index| holds(index)).ok_or_else(outside)?,
+        };
+        let depth = depth.clamp(boundaries[layer], boundaries[layer + 1]);
+        let lag = ModelError::not_negative("lag", lag.value)?;
+        self.probes.push(Probe { name, depth, layer, lag });
+        Ok(self)
+    }
+
+    /// Its name.
+    pub fn name(&self) -> &str {
+        &self.name
+    }
+
+    /// Its layers, from the hot face outwards.
+    pub fn layers(&self) -> &[Layer] {
+        &self.layers
+    }
+
+    /// Its probes.
+    pub fn probes(&self) -> &[Probe] {
+        &self.probes
+    }
+
+    /// Depths of the boundaries: 0, each layer boundary, the thickness, m.
+    pub fn boundaries(&self) -> Vec<Metres> {
+        let mut depth = 0.0;
+        let mut depths = vec![0.0];
+        for layer in &self.layers {
+            depth += layer.thickness;
+            depths.push(depth);
+        }
+        depths
+    }
+
+    /// Thickness of the whole wall, m.
+    pub fn thickness(&self) -> Metres {
+        self.layers.iter().map(|layer| layer.thickness).sum()
+    }
+
+    /// Mass per area of the hot face, kg/m².
+    pub fn mass(&self) -> f64 {
+        let boundaries = self.boundaries();
+        self.layers
+            .iter()
+            .zip(boundaries.windows(2))
+            .map(|(layer, depth)| layer.material.density * self.shape.volume(depth[0], depth[1]))
+            .sum()
+    }
+
+    /// What resists the heat between layer `index` and the next; `None`: perfect contact.
+    pub(crate) fn resistance(&self, index: usize) -> Option<&Resistance> {
+        self.layers[index].joint.as_ref().and_then(|joint| joint.resistance.as_ref())
+    }
+
+    /// Whether the station has such a place.
+    pub fn has(&self, place: Place) -> bool {
+        match place {
+            Place::HotFace | Place::OuterFace | Place::Everywhere => true,
+            Place::Layer(index) => index < self.layers.len(),
+            Place::Joint(index) => index + 1 < self.layers.len(),
+            Place::Probe(index) => index < self.probes.len(),
+        }
+    }
+
+    /// The name of a place, as the case file writes it.
+    pub fn place_name(&self, place: Place) -> String {
+        match place {
+            Place::HotFace => "hot-face".to_owned(),
+            Place::OuterFace => "outer-face".to_owned(),
+            Place::Everywhere => "everywhere".to_owned(),
+            Place::Layer(index) => self.layers[index].name.clone(),
+            Place::Joint(index) => format!("{}|{}", self.layers[index].name, self.layers[index + 1].name),
+            Place::Probe(index) => self.probes[index].name.clone(),
+        }
+    }
+}
