@@ -4,5 +4,6 @@
 #![deny(unsafe_code)]
 
 pub mod answers;
+pub mod case;
 pub mod diagnostics;
 pub mod model;
