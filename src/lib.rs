@@ -6,4 +6,8 @@
 pub mod answers;
 pub mod case;
 pub mod diagnostics;
+pub mod heat;
 pub mod model;
+pub mod run;
+pub mod solve;
+pub mod wall;

@@ -40,14 +40,26 @@ impl<const L: usize> Tridiagonal<L> {
     pub fn factor(&mut self, shift: f64, step: Slot<L>) {
         let len = self.diagonal.len();
         let half = len / 2;
-        let Self { lower, diagonal, upper, multiplier, inverse, back, middle } = self;
+        let Self {
+            lower,
+            diagonal,
+            upper,
+            multiplier,
+            inverse,
+            back,
+            middle,
+        } = self;
         let mut pivot = |i: usize, neighbour: Option<usize>| {
             let mut value = [0.0; L];
             for l in 0..L {
                 value[l] = shift - step[l] * diagonal[i][l];
                 if let Some(done) = neighbour {
                     // Row i loses its entry in column `done`; that row's entry in column i is the outer off-diagonal seen from the other side.
-                    let (own, other) = if done < i { (lower[i][l], upper[done][l]) } else { (upper[i][l], lower[done][l]) };
+                    let (own, other) = if done < i {
+                        (lower[i][l], upper[done][l])
+                    } else {
+                        (upper[i][l], lower[done][l])
+                    };
                     let factor = -step[l] * own * inverse[done][l];
                     multiplier[i][l] = factor;
                     value[l] += factor * step[l] * other;
@@ -165,7 +177,11 @@ mod tests {
                     if i + 1 < len {
                         sum -= step[l] * matrix.upper[i][l] * x[i + 1][l];
                     }
-                    assert!((sum - right[i][l]).abs() < 1e-12 * (1.0 + right[i][l].abs()), "{len} rows, row {i}: {sum} for {}", right[i][l]);
+                    assert!(
+                        (sum - right[i][l]).abs() < 1e-12 * (1.0 + right[i][l].abs()),
+                        "{len} rows, row {i}: {sum} for {}",
+                        right[i][l]
+                    );
                 }
             }
         }
