@@ -5,7 +5,7 @@ use super::pass::{Keep, LevelOf, Pass, PassSettings, kept, limits};
 use super::steady::{Burn, steady};
 use super::types::*;
 use crate::model::{HeatingModel, Kelvin, Limit, Model, PhaseKind, Place, Seconds, Shape, Station};
-use crate::run::{Peak, Quantity, Rest, Row, RunError};
+use crate::run::{Peak, Quantity, Rest, Row, RunError, SAME};
 use std::sync::atomic::AtomicBool;
 
 /// What to compute beside the answers.
@@ -316,9 +316,6 @@ fn evened_out(resolved: &Resolved) -> EvenedOut {
     }
 }
 
-/// A difference from the value that a wall at rest can't be told from, K: from above, it never comes down to its own surroundings.
-const SAME: f64 = 1e-6;
-
 fn waits(model: &Model, index: usize, resolved: &Resolved) -> Vec<WaitAnswer> {
     let station = &model.stations[index];
     let pass = &resolved.pass;
@@ -327,9 +324,11 @@ fn waits(model: &Model, index: usize, resolved: &Resolved) -> Vec<WaitAnswer> {
     asked
         .filter_map(|(question, wait)| {
             let (level, quantity, crossings) = pass.crossings(LevelOf::Wait(question))?;
-            let ends = pass.watcher.last_phase().outcome(quantity, &pass.map, level);
-            let creeps = crossings.above && pass.watcher.last_phase().outcome(quantity, &pass.map, level - SAME) == Rest::Above;
-            let state = if creeps || (ends == Rest::Above && pass.watcher.last_phase().outcome(quantity, &pass.map, level + SAME) == Rest::Above) {
+            // From above, nothing comes down to its own surroundings.
+            let ends_above = pass.watcher.last_phase().outcome(quantity, &pass.map, level - SAME) == Rest::Above;
+            let was_above = crossings.above || crossings.last_down.is_some_and(|down| down.0 > origin);
+            let rises_above = pass.watcher.last_phase().outcome(quantity, &pass.map, level + SAME) == Rest::Above;
+            let state = if rises_above || (ends_above && was_above) {
                 WaitState::Never
             } else if crossings.above {
                 WaitState::Beyond

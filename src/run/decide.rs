@@ -4,6 +4,9 @@ use super::{Moment, Quantity, Watcher};
 use crate::model::{Convection, Kelvin, Outside, Place, Station, Surroundings};
 use crate::wall::{Equilibrium, Forcing, Over, equilibrium};
 
+/// A level that a wall at rest can't be told from, K: from above, nothing comes down to its own surroundings.
+pub const SAME: f64 = 1e-6;
+
 /// How the last phase ends for one level.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Rest {
@@ -127,6 +130,9 @@ impl LastPhase {
             let level = watcher.levels()[index];
             let quantity = watcher.quantities()[level.quantity];
             let now = watcher.values()[level.quantity];
+            if now > level.value && self.outcome(quantity, moment.map(), level.value - SAME) == Rest::Above {
+                return true;
+            }
             match self.outcome(quantity, moment.map(), level.value) {
                 Rest::Above => true,
                 Rest::Unknown => false,

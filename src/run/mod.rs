@@ -7,7 +7,7 @@ mod timeline;
 mod watch;
 
 pub use course::{Course, Moment, RunError};
-pub use decide::{LastPhase, Rest};
+pub use decide::{LastPhase, Rest, SAME};
 pub use record::{Recorder, Row};
 pub use timeline::{LONGEST, Segment, Timeline};
 pub use watch::{Crossings, Level, Peak, Quantity, Watcher};
