@@ -6,7 +6,7 @@ use crate::run::{Quantity, RunError};
 use crate::wall::Grid;
 
 /// Share of the promised tolerance that one step may err by.
-pub(super) const STEP_SHARE: f64 = 0.1;
+pub(super) const STEP_SHARE: f64 = 1.0;
 /// Share of the promised tolerance that the estimate must keep to.
 const WANTED_SHARE: f64 = 0.5;
 /// The second solution's steps may err by this many times more.

@@ -164,7 +164,7 @@ impl<const L: usize> Integrator<L> {
             let step = length.map(|length| trial * length);
             let error = self.attempt(system, share, trial, step, depends_on_time);
             let wanted = settings.safety * (settings.tolerance / error).powf(0.2);
-            if !(error <= settings.tolerance) {
+            if error > settings.tolerance {
                 self.effort.rejected += 1;
                 grown = 1.0;
                 size = trial * if wanted.is_finite() { wanted.clamp(0.1, 0.9) } else { 0.1 };
