@@ -13,6 +13,7 @@ use soakdown::wall::Grid;
 use std::time::{Duration, Instant};
 
 #[path = "../walls.rs"]
+#[expect(dead_code, reason = "the checks use all of it, the benchmark a part")]
 mod walls;
 use walls::*;
 
