@@ -10,4 +10,5 @@ pub mod heat;
 pub mod model;
 pub mod run;
 pub mod solve;
+pub mod units;
 pub mod wall;
