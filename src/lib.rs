@@ -7,3 +7,4 @@ pub mod answers;
 pub mod case;
 pub mod diagnostics;
 pub mod model;
+pub mod report;
