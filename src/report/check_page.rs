@@ -7,6 +7,7 @@ use super::profile_text::phases_text;
 use super::run_page::warning_line;
 use crate::answers::{CheckAnswers, HeatingCheck, StationCheck};
 use crate::case::{Case, Input, InputValue};
+use crate::model::{HeatingModel, Station};
 
 /// Keys whose temperatures are differences.
 const DIFFERENCES: [&str; 5] = ["tolerance", "limits", "accuracy", "noise", "by"];
@@ -19,8 +20,8 @@ pub fn check_page(case: &Case, answers: &CheckAnswers, units: Units) -> String {
     page.text(0, &format!("{}: accepted. {}", styled(BOLD, &case.path), case.model.title()));
     page.gap();
     page.text(0, &format!("{} {}", styled(BOLD, "phases:"), phases_text(&answers.phases)));
-    for station in &answers.stations {
-        page.text(0, &station_text(station, units));
+    for (station, model) in answers.stations.iter().zip(case.model.stations()) {
+        page.text(0, &station_text(station, model, units));
     }
     page.gap();
     let sources = sources(case);
@@ -38,22 +39,27 @@ pub fn check_page(case: &Case, answers: &CheckAnswers, units: Units) -> String {
     page.finish()
 }
 
-fn station_text(station: &StationCheck, units: Units) -> String {
+fn station_text(station: &StationCheck, model: &Station, units: Units) -> String {
     let heating = match &station.heating {
-        Some(heating) => heating_text(heating, units),
+        Some(heating) => heating_text(heating, model, units),
         None => "not heated".to_owned(),
     };
     format!("{} {} nodes; {heating}", styled(BOLD, &format!("{}:", station.name)), station.nodes)
 }
 
-fn heating_text(heating: &HeatingCheck, units: Units) -> String {
+fn heating_text(heating: &HeatingCheck, model: &Station, units: Units) -> String {
     let figures = Figures::new(units, 0.0);
     let flux = |value: f64| format!("{} kW/m²", significant(value * 1e-3, 4));
-    let mut text = format!(
-        "at level 1 and a wall at {}: {} into the wall",
-        figures.given(heating.wall),
-        flux(heating.flux)
-    );
+    let log = model
+        .heating
+        .as_ref()
+        .is_some_and(|heating| matches!(heating.model, HeatingModel::Log(_)));
+    let case = if log {
+        "heating log (level, ramp and tail do not act on it), first row"
+    } else {
+        "level 1"
+    };
+    let mut text = format!("at {case}, wall at {}: {} into the wall", figures.given(heating.wall), flux(heating.flux));
     if heating.parts.len() > 1 {
         let parts: Vec<String> = heating.parts.iter().map(|&(name, value)| format!("{name} {}", flux(value))).collect();
         text.push_str(&format!(" ({})", parts.join(", ")));
@@ -167,7 +173,7 @@ mod tests {
         assert!(page.contains("40 × (hold 4 s, burn 1 s)"));
         let page = page.split_whitespace().collect::<Vec<_>>().join(" ");
         assert!(
-            page.contains("at level 1 and a wall at 20 °C: 10830 kW/m² into the wall, coefficient 4000 W/m²/K, gas at 2726.85 °C"),
+            page.contains("at level 1, wall at 20 °C: 10830 kW/m² into the wall, coefficient 4000 W/m²/K, gas at 2726.85 °C"),
             "{page}"
         );
     }
