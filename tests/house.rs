@@ -33,7 +33,7 @@ const HOMES: [(&str, &str); 10] = [
     ("sha2", "case"),
     ("tempfile", "cli"),
     ("toml", "case"),
-    ("comfy_table", "report"),
+    ("strsim", "case"),
 ];
 
 fn files(folder: &Path, found: &mut Vec<PathBuf>) -> std::io::Result<()> {
