@@ -259,9 +259,6 @@ impl Watcher {
     }
 
     fn note_extrema(&mut self, moment: &Moment<'_>, extrema: &[Extremum]) {
-        if extrema.is_empty() {
-            return;
-        }
         for extremum in extrema {
             let clock = moment.clock(extremum.theta);
             let depth = moment.map().depths[extremum.node];

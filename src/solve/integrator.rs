@@ -93,6 +93,9 @@ pub struct Integrator<const L: usize> {
     matrix: Tridiagonal<L>,
 }
 
+/// Share of the last step that a phase which starts without a jump begins with.
+const AFTER_KINK: f64 = 0.1;
+
 impl<const L: usize> Integrator<L> {
     /// An integration that starts from these unknowns and followers.
     pub fn new(unknowns: Vec<Slot<L>>, followers: Vec<Slot<L>>) -> Self {
@@ -149,7 +152,8 @@ impl<const L: usize> Integrator<L> {
         );
         let mut depends_on_time = system.rate_of_time(share, &self.unknowns, &mut self.rate_of_time, &mut self.follower_rate_of_time);
         let mut size = match self.last_step {
-            Some(time) => (time / longest).min(1.0),
+            // A kink without a jump bends what follows: start with a part of the last step.
+            Some(time) => (AFTER_KINK * time / longest).min(1.0),
             None => self.first_step(system, settings, length, depends_on_time)?,
         };
         let mut taken = 0;

@@ -451,7 +451,11 @@ impl<const L: usize> Wall<L> {
         for l in 0..L {
             let (inward, inward_slope) = self.hot_flux(l, share, self.temperature[0][l]);
             // What leaves over a held face is what the last pair of nodes conducts into it.
-            let (outward, outward_slope) = if self.held { (self.flux[last][l], 0.0) } else { self.outer_flux(l, self.temperature[last][l]) };
+            let (outward, outward_slope) = if self.held {
+                (self.flux[last][l], 0.0)
+            } else {
+                self.outer_flux(l, self.temperature[last][l])
+            };
             self.flux[0][l] = inward;
             self.flux[last + 1][l] = outward;
             // Between two Jacobians the derivatives must stay those that the matrix was made of, or the ledgers no longer close.
