@@ -74,13 +74,7 @@ fn layer(name: &str, material: &str, conductivity: f64, thickness: f64) -> Layer
         melts: None,
         decomposes: None,
     });
-    Layer::new(
-        name,
-        Arc::new(material.expect("a material")),
-        Length::new::<millimeter>(thickness),
-        emissivity(),
-    )
-    .expect("a layer")
+    Layer::new(name, Arc::new(material.expect("a material")), Length::new::<millimeter>(thickness)).expect("a layer")
 }
 
 fn station() -> Station {
