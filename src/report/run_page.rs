@@ -12,7 +12,7 @@ use crate::diagnostics::Notice;
 use crate::model::{HeatingModel, LimitOrigin, PhaseKind, Seconds, Station};
 
 /// More warnings than this are counted, not listed.
-const LISTED_WARNINGS: usize = 6;
+const LISTED_WARNINGS: usize = 4;
 
 /// Cautions that the page has said by then: with the margin, and under the waits.
 const SAID_ABOVE: [&str; 2] = ["no-allowance", "measure-before-touch"];
@@ -44,7 +44,7 @@ fn verdict(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units) {
         Verdict::NoLimits => (DOUBT, "NO LIMITS", "nothing here has a limit, so nothing was judged"),
         Verdict::WithinLimits => (GOOD, "WITHIN LIMITS", "every limit of this case is kept, in this model"),
     };
-    let mut text = format!("{}: {meaning}.", styled(style, word));
+    page.text(0, &format!("{}: {meaning}.", styled(style, word)));
     if let Some(worst) = &answers.worst {
         let found = find(answers, &worst.station, &worst.place);
         let error = found.map_or(0.0, |(station, _)| station.numerical.estimated_error);
@@ -55,12 +55,9 @@ fn verdict(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units) {
             None => "",
         };
         let allowance = if case.model.allowance().given() { "" } else { " (no allowance taken)" };
-        text.push_str(&format!(
-            " Smallest margin {margin}{allowance}: {} of {}{whose}.",
-            worst.place, worst.station
-        ));
+        let text = format!("Smallest margin {margin}{allowance}: {} of {}{whose}.", worst.place, worst.station);
+        page.text(0, &text);
     }
-    page.text(0, &text);
     let allowance = case.model.allowance();
     if allowance.given() && answers.worst.is_some() {
         let limits = Figures::new(units, 0.0).estimate(allowance.limits);
@@ -146,14 +143,17 @@ fn peaks_table(answers: &RunAnswers, station: &StationAnswers, figures: Figures)
         ]);
     }
     for probe in &station.probes {
+        let reading = figures.peak(probe.peak);
+        let wall = figures.peak(probe.peak_true);
+        let wall = if wall == reading { String::new() } else { format!("wall {wall}") };
         table.row([
             format!("{} reads", probe.name).into(),
-            figures.peak(probe.peak).into(),
+            reading.into(),
             when(answers, probe.peak_time, None).into(),
             "".into(),
             format!("at {}", figures.length(probe.depth)).into(),
             "".into(),
-            format!("wall {}", figures.peak(probe.peak_true)).into(),
+            wall.into(),
         ]);
     }
     table
@@ -188,7 +188,7 @@ fn after_burn(answers: &RunAnswers, station: &StationAnswers, figures: Figures) 
     let mut text = match answers.last_burn_end {
         None => "no burn".to_owned(),
         Some(_) if soak.outer_face_rise > 0.0 => format!(
-            "soak-back: after the burn the outer face gets {} hotter, until clock {}",
+            "soak-back: outer face up {} after the burn, until clock {}",
             figures.rise(soak.outer_face_rise),
             clock(soak.outer_face_peak)
         ),
@@ -200,9 +200,9 @@ fn after_burn(answers: &RunAnswers, station: &StationAnswers, figures: Figures) 
         text.push_str(&format!("; last point to peak: at clock {}, {} deep", clock(time), figures.length(depth)));
     }
     text.push_str(&match station.evened_out {
-        EvenedOut::From(time) => format!("; evened out (within {}) from clock {} on", figures.one_kelvin(), clock(time)),
-        EvenedOut::Never => format!("; never evens out (within {}): its surroundings keep it uneven", figures.one_kelvin()),
-        EvenedOut::Beyond => format!("; not evened out (within {}) in 100 h", figures.one_kelvin()),
+        EvenedOut::From(time) => format!("; even within {} from clock {} on", figures.one_kelvin(), clock(time)),
+        EvenedOut::Never => format!("; never even within {}: its surroundings keep it uneven", figures.one_kelvin()),
+        EvenedOut::Beyond => format!("; not even within {} in 100 h", figures.one_kelvin()),
     });
     text
 }
@@ -302,7 +302,7 @@ fn notices_part(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units
     }
     if warnings.len() > LISTED_WARNINGS {
         let more = warnings.len() - LISTED_WARNINGS;
-        page.text(0, &format!("{} {more} more: see --json", styled(DOUBT, "warning")));
+        page.text(0, &format!("{} {more} more: --json has them all", styled(DOUBT, "warning")));
     }
     for caution in cautions_of_run(&case.model, answers, units) {
         if SAID_ABOVE.contains(&caution.code) {
@@ -483,6 +483,6 @@ mod tests {
         case.notices = vec![case.notices[0].clone(); 9];
         let page = plain(&run_page(&case, &sample::answers(), Units::Si));
         assert!(page.contains("warning throat: an odd value [odd-value]"));
-        assert!(page.contains("warning 3 more: see --json"));
+        assert!(page.contains("warning 5 more: --json has them all"));
     }
 }
