@@ -12,7 +12,7 @@ use crate::diagnostics::Notice;
 use crate::model::{HeatingModel, LimitOrigin, PhaseKind, Seconds, Station};
 
 /// More warnings than this are counted, not listed.
-const LISTED_WARNINGS: usize = 4;
+const LISTED_WARNINGS: usize = 3;
 
 /// Cautions that the page has said by then: with the margin, and under the waits.
 const SAID_ABOVE: [&str; 2] = ["no-allowance", "measure-before-touch"];
@@ -200,7 +200,7 @@ fn after_burn(answers: &RunAnswers, station: &StationAnswers, figures: Figures) 
         text.push_str(&format!("; last point to peak: at clock {}, {} deep", clock(time), figures.length(depth)));
     }
     text.push_str(&match station.evened_out {
-        EvenedOut::From(time) => format!("; even within {} from clock {} on", figures.one_kelvin(), clock(time)),
+        EvenedOut::From(time) => format!("; even within {} from {} on", figures.one_kelvin(), clock(time)),
         EvenedOut::Never => format!("; never even within {}: its surroundings keep it uneven", figures.one_kelvin()),
         EvenedOut::Beyond => format!("; not even within {} in 100 h", figures.one_kelvin()),
     });
@@ -483,6 +483,6 @@ mod tests {
         case.notices = vec![case.notices[0].clone(); 9];
         let page = plain(&run_page(&case, &sample::answers(), Units::Si));
         assert!(page.contains("warning throat: an odd value [odd-value]"));
-        assert!(page.contains("warning 5 more: --json has them all"));
+        assert!(page.contains("warning 6 more: --json has them all"));
     }
 }
