@@ -57,6 +57,7 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         let second = Pass::of_profile(model, station_index, &grid.halved(), &coarse, &keep)?;
         let estimated_error = difference(&pass, &second) / RICHARDSON;
         round += 1;
+        if std::env::var("SD").is_ok() { eprintln!("{fineness} {} nodes {estimated_error} steps {} {}", pass.map.len(), pass.steps, second.steps); }
         if estimated_error <= wanted || round == MOST_ROUNDS {
             return Ok(Resolved { grid, pass, estimated_error });
         }

@@ -56,7 +56,6 @@ fn best(mut work: impl FnMut()) -> Duration {
 
 fn main() -> Result<(), Box<dyn std::error::Error>> {
     let model = wall()?;
-    trial(&model);
     let station = &model.stations()[0];
     let grid = Grid::uniform(&[20, 59, 19]);
     let segments = Timeline::of_profile(&model, station, Some(3600.0));
@@ -89,39 +88,4 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
         1e3 * time.as_secs_f64()
     );
     Ok(())
-}
-
-fn trial(model: &Model) {
-    let station = &model.stations()[0];
-    let grid = Grid::uniform(&[20, 59, 19]);
-    let segments = Timeline::of_profile(model, station, Some(3600.0));
-    let times: Vec<f64> = vec![
-        0.5, 1.0, 2.0, 4.0, 6.0, 8.0, 10.0, 11.0, 12.0, 15.0, 20.0, 30.0, 50.0, 100.0, 200.0, 400.0, 800.0, 1600.0, 3000.0, 3600.0,
-    ];
-    let go = |tol: f64| {
-        let mut rec = soakdown::run::Recorder::new(times.clone(), false, vec![]);
-        let mut course = Course::new(station, model.surroundings(), &grid, 293.15, tol);
-        course
-            .drive(&segments, None, |m| {
-                rec.see(m);
-                Flow::Continue
-            })
-            .unwrap();
-        (rec.rows, course.steps(), course.effort())
-    };
-    let exact = go(1e-6).0;
-    for tol in [0.5, 0.2, 0.1, 0.05, 0.02, 0.01, 0.005, 0.002, 0.001] {
-        let (rows, steps, effort) = go(tol);
-        let mut worst: f64 = 0.0;
-        let mut at = 0.0;
-        for (a, b) in rows.iter().zip(&exact) {
-            for (x, y) in a.faces.iter().zip(&b.faces) {
-                if (x - y).abs() > worst {
-                    worst = (x - y).abs();
-                    at = a.clock;
-                }
-            }
-        }
-        println!("tol {tol} steps {steps} {effort:?} error {worst:.5} at {at}");
-    }
 }
