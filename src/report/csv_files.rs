@@ -1,21 +1,8 @@
 //! `trace.csv` and `depths.csv`: RFC 4180, SI, full precision.
 
+use super::error::ReportError;
 use crate::answers::StationHistory;
 use crate::model::{Kelvin, Station};
-
-/// Why a history can't be written as a table.
-#[derive(Debug, thiserror::Error)]
-pub enum ReportError {
-    /// Two stations have different rows, so that they can't stand side by side.
-    #[error("station \"{station}\" has other trace rows than the first station")]
-    UnevenRows {
-        /// The station that differs.
-        station: String,
-    },
-    /// The writer failed.
-    #[error("a table could not be written: {0}")]
-    Csv(#[from] csv::Error),
-}
 
 /// `trace.csv`: one row a time, the stations side by side.
 ///
