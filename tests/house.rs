@@ -23,7 +23,7 @@ const ROOMS: [(&str, u8); 11] = [
 const EVERYWHERE: [&str; 4] = ["uom", "serde", "csv", "thiserror"];
 
 /// The one room of every other crate.
-const HOMES: [(&str, &str); 10] = [
+const HOMES: [(&str, &str); 11] = [
     ("annotate_snippets", "cli"),
     ("anstream", "cli"),
     ("anstyle", "report"),
@@ -34,6 +34,7 @@ const HOMES: [(&str, &str); 10] = [
     ("tempfile", "cli"),
     ("toml", "case"),
     ("strsim", "case"),
+    ("textwrap", "report"),
 ];
 
 fn files(folder: &Path, found: &mut Vec<PathBuf>) -> std::io::Result<()> {

@@ -1,4 +1,5 @@
 //! Checks of the whole against something outside it, and of the program as people use it. One binary: it links once.
 
+mod cli;
 mod house;
 mod walls;

@@ -7,8 +7,8 @@ use super::failure::Failure;
 use super::files::{OutputFile, write_files};
 use super::mistakes::rendered;
 use super::printer::Printer;
-use super::start::{json_text, units};
-use soakdown::report::{CheckDocument, check_page};
+use super::start::units;
+use soakdown::report::{CheckDocument, check_page, json};
 use soakdown::{answers, case};
 
 /// Reads the case, looks at it, shows what it says.
@@ -22,12 +22,12 @@ pub fn check(arguments: &CheckArguments, printer: Printer) -> Result<ExitStatus,
     let command = check_line(arguments);
     let document = CheckDocument::new(&case, &command, &answers);
     if common.json {
-        printer.answer(&json_text(&document)?)?;
+        printer.answer(&json(&document)?)?;
     } else {
         printer.page(&check_page(&case, &answers, units(common)))?;
     }
     if let Some(folder) = &common.out {
-        let bytes = json_text(&document)?.into_bytes();
+        let bytes = json(&document)?.into_bytes();
         write_files(folder, &[OutputFile { name: "check.json", bytes }])?;
     }
     Ok(ExitStatus::Computed)

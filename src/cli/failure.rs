@@ -22,9 +22,6 @@ pub enum Failure {
     /// A document can't be put together.
     #[error(transparent)]
     Report(#[from] ReportError),
-    /// A document can't be put together.
-    #[error("the document can't be written as JSON: {0}")]
-    Json(#[from] serde_json::Error),
     /// The answer can't be printed.
     #[error("the answer can't be printed: {0}")]
     Print(#[source] io::Error),
@@ -44,7 +41,7 @@ impl Failure {
         match self {
             Self::Refused(_) => ExitStatus::Refused,
             Self::Run(RunError::Interrupted) => ExitStatus::Interrupted,
-            Self::Run(_) | Self::Interrupt(_) | Self::Report(_) | Self::Json(_) | Self::Print(_) | Self::Write { .. } => ExitStatus::Failed,
+            Self::Run(_) | Self::Interrupt(_) | Self::Report(_) | Self::Print(_) | Self::Write { .. } => ExitStatus::Failed,
         }
     }
 }

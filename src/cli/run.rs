@@ -9,10 +9,10 @@ use super::interrupt::stop_flag;
 use super::mistakes::{plain_warning, rendered};
 use super::printer::Printer;
 use super::progress::Progress;
-use super::start::{json_text, units};
+use super::start::units;
 use soakdown::answers::{RunOptions, RunOutcome, Verdict};
 use soakdown::case::Case;
-use soakdown::report::{ResultDocument, depths_csv, run_page, trace_csv};
+use soakdown::report::{ResultDocument, depths_csv, json, run_page, trace_csv};
 use soakdown::{answers, case};
 
 /// Reads the case, runs it, shows and writes the answers.
@@ -31,7 +31,7 @@ pub fn run(arguments: &RunArguments, printer: Printer) -> Result<ExitStatus, Fai
     let command = run_line(arguments);
     let document = ResultDocument::new(&case, &command, &outcome.answers);
     if common.json {
-        printer.answer(&json_text(&document)?)?;
+        printer.answer(&json(&document)?)?;
     } else {
         printer.page(&run_page(&case, &outcome.answers, units(common)))?;
     }
@@ -39,7 +39,7 @@ pub fn run(arguments: &RunArguments, printer: Printer) -> Result<ExitStatus, Fai
         let stations = case.model.stations();
         let file = |name, bytes| OutputFile { name, bytes };
         let files = [
-            file("result.json", json_text(&document)?.into_bytes()),
+            file("result.json", json(&document)?.into_bytes()),
             file("trace.csv", trace_csv(stations, &outcome.histories)?),
             file("depths.csv", depths_csv(stations, &outcome.histories)?),
         ];

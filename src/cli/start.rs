@@ -9,7 +9,6 @@ use super::printer::Printer;
 use super::run::run;
 use clap::Parser;
 use clap::error::ErrorKind;
-use serde::Serialize;
 use soakdown::report::Units;
 use std::ffi::OsString;
 
@@ -58,11 +57,6 @@ fn refusal(diagnostics: &soakdown::diagnostics::Diagnostics) -> String {
         _ => format!("{errors} mistakes"),
     };
     format!("{}\n\n{}", rendered(diagnostics), plain_error(&format!("{count}; nothing was computed")))
-}
-
-/// A document as text, with its line ended.
-pub fn json_text(document: &impl Serialize) -> Result<String, Failure> {
-    Ok(serde_json::to_string_pretty(document)? + "\n")
 }
 
 /// Units of the screen.

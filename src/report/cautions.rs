@@ -200,7 +200,7 @@ fn soak_back(answers: &RunAnswers, units: Units) -> Option<Caution> {
              not take a reading at cut-off for the peak; nobody goes near earlier than the site's safety plan says.",
             station.name
         ),
-        short: format!("soak-back: hotter until {latest} after the burn; a reading at cut-off is not the peak (safety plan)"),
+        short: format!("soak-back: hotter until {latest} after the burn; the reading at cut-off is no peak (safety plan)"),
     })
 }
 

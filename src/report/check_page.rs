@@ -144,8 +144,9 @@ fn number(value: f64) -> String {
         let (digits, power) = text.split_once('e').unwrap_or((&text, "0"));
         return format!("{}e{power}", digits.trim_end_matches('0').trim_end_matches('.'));
     }
-    let whole = if magnitude < 1.0 { 0 } else { magnitude.log10().floor() as usize + 1 };
-    let decimals = if magnitude < 1.0 { 9 } else { 6usize.saturating_sub(whole) };
+    // Digits before the point; 0 or less below 1.
+    let whole = if magnitude == 0.0 { 1 } else { magnitude.log10().floor() as i32 + 1 };
+    let decimals = usize::try_from(6 - whole).unwrap_or(0);
     trimmed(value, decimals)
 }
 
@@ -194,6 +195,7 @@ mod tests {
             (2.5e-6, "2.5e-6"),
             (0.0, "0"),
             (1234.5678, "1234.57"),
+            (1.0 / 11.0, "0.0909091"),
         ] {
             assert_eq!(number(value), text);
         }

@@ -1,21 +1,8 @@
 //! `trace.csv` and `depths.csv`: RFC 4180, SI, full precision.
 
+use super::error::ReportError;
 use crate::answers::StationHistory;
 use crate::model::{Kelvin, Station};
-
-/// Why a history can't be written as a table.
-#[derive(Debug, thiserror::Error)]
-pub enum ReportError {
-    /// Two stations have different rows, so that they can't stand side by side.
-    #[error("station \"{station}\" has other trace rows than the first station")]
-    UnevenRows {
-        /// The station that differs.
-        station: String,
-    },
-    /// The writer failed.
-    #[error("a table could not be written: {0}")]
-    Csv(#[from] csv::Error),
-}
 
 /// `trace.csv`: one row a time, the stations side by side.
 ///
@@ -117,7 +104,7 @@ fn bytes(writer: csv::Writer<Vec<u8>>) -> Result<Vec<u8>, ReportError> {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::answers::{DepthProfile, TraceRow};
+    use crate::answers::{DepthProfile, RunOptions, TraceRow, run};
     use crate::model::PhaseKind;
     use crate::report::sample;
 
@@ -179,5 +166,26 @@ mod tests {
             text,
             "station,time_s,depth_m,temperature_K\r\nthroat,2,0,900\r\nthroat,2,0.008,400\r\nthroat,2,0.008,390\r\n"
         );
+    }
+
+    /// What the answers room hands over fits the columns.
+    #[test]
+    fn the_history_of_a_real_run_fills_every_column() {
+        let case = sample::case();
+        let options = RunOptions {
+            history: true,
+            times: vec![1.0, 2.0, 10.0],
+            ..RunOptions::default()
+        };
+        let outcome = run(&case.model, &options).expect("a run");
+        let trace = trace_csv(case.model.stations(), &outcome.histories).expect("a table");
+        // The reader refuses a row of another length than the header.
+        let mut reader = csv::Reader::from_reader(trace.as_slice());
+        let rows: Vec<csv::StringRecord> = reader.records().collect::<Result<_, _>>().expect("rows");
+        let times: Vec<&str> = rows.iter().map(|row| &row[0]).collect();
+        assert_eq!(times, ["1", "2", "10"]);
+        assert_eq!(&rows[1][1], "burn");
+        let depths = depths_csv(case.model.stations(), &outcome.histories).expect("a table");
+        assert!(csv::Reader::from_reader(depths.as_slice()).records().all(|row| row.is_ok()));
     }
 }

@@ -15,9 +15,29 @@ pub(super) const DOUBT: Style = AnsiColor::Yellow.on_default().bold();
 /// What is broken.
 pub(super) const BAD: Style = AnsiColor::Red.on_default().bold();
 
+/// Stands between a number and its unit while lines are broken; a plain space in the end, so that a person can search for "48 °C".
+const BOUND: char = '\u{a0}';
+/// Units that stay on their number's line.
+const UNITS: [&str; 10] = ["°C", "°F", "K", "s", "min", "h", "%", "mm", "in", "MJ/m²"];
+
 /// `text` in a style.
 pub(super) fn styled(style: Style, text: &str) -> String {
     format!("{style}{text}{style:#}")
+}
+
+/// The same text, each unit bound to its number.
+fn bound(text: &str) -> String {
+    let mut bound = String::new();
+    let mut words = text.split(' ').peekable();
+    while let Some(word) = words.next() {
+        bound.push_str(word);
+        if let Some(next) = words.peek() {
+            let number = word.ends_with(|letter: char| letter.is_ascii_digit());
+            let unit = UNITS.contains(&next.trim_end_matches([')', ',', ';', '.', ':']));
+            bound.push(if number && unit { BOUND } else { ' ' });
+        }
+    }
+    bound
 }
 
 /// Lines under construction.
@@ -31,8 +51,13 @@ impl Page {
     pub(super) fn text(&mut self, indent: usize, text: &str) {
         let first = " ".repeat(indent);
         let rest = " ".repeat(indent + 2);
-        let options = textwrap::Options::new(WIDTH).initial_indent(&first).subsequent_indent(&rest);
-        self.lines.extend(textwrap::wrap(text, options).into_iter().map(|line| line.into_owned()));
+        let options = textwrap::Options::new(WIDTH)
+            .initial_indent(&first)
+            .subsequent_indent(&rest)
+            .word_splitter(textwrap::WordSplitter::NoHyphenation);
+        let text = bound(text);
+        self.lines
+            .extend(textwrap::wrap(&text, options).into_iter().map(|line| line.into_owned()));
     }
 
     /// An empty line.
@@ -50,7 +75,7 @@ impl Page {
     pub(super) fn finish(self) -> String {
         let mut text = String::new();
         for line in self.lines {
-            text.push_str(line.trim_end());
+            text.push_str(&line.trim_end().replace(BOUND, " "));
             text.push('\n');
         }
         text
@@ -198,6 +223,17 @@ mod tests {
         let line = &table.lines(40)[0];
         assert_eq!(display_width(line), 40);
         assert!(line.contains('…') && line.ends_with("12 K"));
+    }
+
+    #[test]
+    fn a_number_is_not_parted_from_its_unit() {
+        for filling in 0..12 {
+            let mut page = Page::default();
+            page.text(0, &format!("{} until 1 h 28 min (below 48 °C), 2 % there", "x".repeat(70 + filling)));
+            let text = page.finish();
+            assert!(text.lines().all(|line| !line.ends_with(|letter: char| letter.is_ascii_digit())), "{text}");
+            assert!(!text.contains(BOUND));
+        }
     }
 
     #[test]

@@ -12,7 +12,10 @@ use crate::diagnostics::Notice;
 use crate::model::{HeatingModel, LimitOrigin, PhaseKind, Seconds, Station};
 
 /// More warnings than this are counted, not listed.
-const LISTED_WARNINGS: usize = 6;
+const LISTED_WARNINGS: usize = 3;
+
+/// Cautions that the page has said by then: with the margin, and under the waits.
+const SAID_ABOVE: [&str; 2] = ["no-allowance", "measure-before-touch"];
 
 /// The page, with its styles as escape codes.
 pub fn run_page(case: &Case, answers: &RunAnswers, units: Units) -> String {
@@ -41,7 +44,7 @@ fn verdict(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units) {
         Verdict::NoLimits => (DOUBT, "NO LIMITS", "nothing here has a limit, so nothing was judged"),
         Verdict::WithinLimits => (GOOD, "WITHIN LIMITS", "every limit of this case is kept, in this model"),
     };
-    let mut text = format!("{}: {meaning}.", styled(style, word));
+    page.text(0, &format!("{}: {meaning}.", styled(style, word)));
     if let Some(worst) = &answers.worst {
         let found = find(answers, &worst.station, &worst.place);
         let error = found.map_or(0.0, |(station, _)| station.numerical.estimated_error);
@@ -52,12 +55,9 @@ fn verdict(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units) {
             None => "",
         };
         let allowance = if case.model.allowance().given() { "" } else { " (no allowance taken)" };
-        text.push_str(&format!(
-            " Smallest margin {margin}{allowance}: {} of {}{whose}.",
-            worst.place, worst.station
-        ));
+        let text = format!("Smallest margin {margin}{allowance}: {} of {}{whose}.", worst.place, worst.station);
+        page.text(0, &text);
     }
-    page.text(0, &text);
     let allowance = case.model.allowance();
     if allowance.given() && answers.worst.is_some() {
         let limits = Figures::new(units, 0.0).estimate(allowance.limits);
@@ -92,18 +92,18 @@ fn station_part(page: &mut Page, answers: &RunAnswers, station: &StationAnswers,
     page.text(
         2,
         &format!(
-            "heat in {}, out {}, stored {} MJ/m² to clock {}; the books close to {} (no measure of accuracy)",
+            "heat to clock {}: in {}, out {}, stored {} MJ/m²; the books close to {}",
+            clock(answers.computed_until),
             megajoules(station.energy.inward),
             megajoules(station.energy.outward),
             megajoules(station.energy.stored),
-            clock(answers.computed_until),
             significant(station.energy.imbalance, 1),
         ),
     );
     page.text(
         2,
         &format!(
-            "numerical error about {}, estimated on half the grid ({} nodes, {} steps)",
+            "numerical error about {}, from a second solution on the half grid ({} nodes, {} steps)",
             figures.estimate(station.numerical.estimated_error),
             station.numerical.nodes,
             station.numerical.steps
@@ -143,14 +143,17 @@ fn peaks_table(answers: &RunAnswers, station: &StationAnswers, figures: Figures)
         ]);
     }
     for probe in &station.probes {
+        let reading = figures.peak(probe.peak);
+        let wall = figures.peak(probe.peak_true);
+        let wall = if wall == reading { String::new() } else { format!("wall {wall}") };
         table.row([
             format!("{} reads", probe.name).into(),
-            figures.peak(probe.peak).into(),
+            reading.into(),
             when(answers, probe.peak_time, None).into(),
             "".into(),
-            format!("at {}, wall {}", figures.length(probe.depth), figures.peak(probe.peak_true)).into(),
+            format!("at {}", figures.length(probe.depth)).into(),
             "".into(),
-            "".into(),
+            wall.into(),
         ]);
     }
     table
@@ -165,7 +168,7 @@ fn kept(limit: &LimitAnswer) -> Cell {
         (true, None) if limit.margin < 0.0 => Cell::styled(DOUBT, "inside allowance"),
         (true, None) => Cell::styled(GOOD, "yes"),
         (true, Some(_)) => Cell::styled(DOUBT, format!("yes, {} over", clock(limit.time_over))),
-        (false, Some(first)) => Cell::styled(BAD, format!("NO, from {}", clock(first))),
+        (false, Some(first)) => Cell::styled(BAD, format!("NO at {}", clock(first))),
         (false, None) => Cell::styled(BAD, "NO"),
     }
 }
@@ -185,7 +188,7 @@ fn after_burn(answers: &RunAnswers, station: &StationAnswers, figures: Figures) 
     let mut text = match answers.last_burn_end {
         None => "no burn".to_owned(),
         Some(_) if soak.outer_face_rise > 0.0 => format!(
-            "soak-back: after the burn the outer face gets {} hotter, until clock {}",
+            "soak-back: outer face up {} after the burn, until clock {}",
             figures.rise(soak.outer_face_rise),
             clock(soak.outer_face_peak)
         ),
@@ -197,9 +200,9 @@ fn after_burn(answers: &RunAnswers, station: &StationAnswers, figures: Figures) 
         text.push_str(&format!("; last point to peak: at clock {}, {} deep", clock(time), figures.length(depth)));
     }
     text.push_str(&match station.evened_out {
-        EvenedOut::From(time) => format!("; level within {} from clock {} on", figures.one_kelvin(), clock(time)),
-        EvenedOut::Never => format!("; never level within {}: its surroundings keep it uneven", figures.one_kelvin()),
-        EvenedOut::Beyond => format!("; not level within {} in 100 h", figures.one_kelvin()),
+        EvenedOut::From(time) => format!("; even within {} from {} on", figures.one_kelvin(), clock(time)),
+        EvenedOut::Never => format!("; never even within {}: its surroundings keep it uneven", figures.one_kelvin()),
+        EvenedOut::Beyond => format!("; not even within {} in 100 h", figures.one_kelvin()),
     });
     text
 }
@@ -217,7 +220,7 @@ fn steady(answers: &RunAnswers, station: &StationAnswers, model: &Station, figur
 
 fn steady_text(answers: &RunAnswers, station: &StationAnswers, state: &SteadyState, figures: Figures) -> String {
     let face = |temperature, reached: Option<f64>| match reached {
-        Some(share) => format!("{} ({} of the way there at its end)", figures.peak(temperature), percent(share)),
+        Some(share) => format!("{} ({} there at its end)", figures.peak(temperature), percent(share)),
         None => format!("{} (where it started)", figures.peak(temperature)),
     };
     let mut text = format!(
@@ -299,9 +302,12 @@ fn notices_part(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units
     }
     if warnings.len() > LISTED_WARNINGS {
         let more = warnings.len() - LISTED_WARNINGS;
-        page.text(0, &format!("{} {more} more: see --json", styled(DOUBT, "warning")));
+        page.text(0, &format!("{} {more} more: --json has them all", styled(DOUBT, "warning")));
     }
     for caution in cautions_of_run(&case.model, answers, units) {
+        if SAID_ABOVE.contains(&caution.code) {
+            continue;
+        }
         page.text(0, &format!("{} {}", styled(DOUBT, "!"), caution.short));
     }
 }
@@ -385,7 +391,7 @@ mod tests {
             row("outer-face"),
             "outer-face 187.3 °C 41.4 s, after burn 200 °C case, service 12.7 K yes"
         );
-        assert_eq!(row("TC1"), "TC1 reads 286.9 °C 2.4 s, after burn at 4 mm, wall 291.9 °C");
+        assert_eq!(row("TC1"), "TC1 reads 286.9 °C 2.4 s, after burn at 4 mm wall 291.9 °C");
     }
 
     #[test]
@@ -397,7 +403,7 @@ mod tests {
         limit.margin = -12.71;
         limit.first_over = Some(30.21);
         let page = page(&answers, Units::Si);
-        assert!(page.contains("-12.8 K  NO, from 30.3 s"), "{page}");
+        assert!(page.contains("-12.8 K  NO at 30.3 s"), "{page}");
     }
 
     #[test]
@@ -429,7 +435,7 @@ mod tests {
     fn a_steady_state_says_whether_it_keeps_the_limits() {
         let mut answers = sample::answers();
         let text = flowed(&page(&answers, Units::Si));
-        assert!(text.contains("hot face 2226.9 °C (50 % of the way there at its end)"), "{text}");
+        assert!(text.contains("hot face 2226.9 °C (50 % there at its end)"), "{text}");
         assert!(text.contains("95 % after 6 min 52 s; that would pass a limit"), "{text}");
         if let Steady::At(state) = &mut answers.stations[0].steady {
             state.within_limits = true;
@@ -477,6 +483,6 @@ mod tests {
         case.notices = vec![case.notices[0].clone(); 9];
         let page = plain(&run_page(&case, &sample::answers(), Units::Si));
         assert!(page.contains("warning throat: an odd value [odd-value]"));
-        assert!(page.contains("warning 3 more: see --json"));
+        assert!(page.contains("warning 6 more: --json has them all"));
     }
 }

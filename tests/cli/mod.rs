@@ -1,0 +1,3 @@
+//! What a person types and sees.
+
+mod run_and_check;
