@@ -50,8 +50,8 @@ impl Form<'_> {
                     None => self.wrong_type(&node.spot, &value, expect),
                 }
             }
-            (Value::Text(text), Expect::Quantity(kind, bounds)) => self.quantity(node, text, *kind, *bounds, path),
-            (Value::Text(text), Expect::Property(kind, bounds)) if *kind != Kind::Number => self.quantity(node, text, *kind, *bounds, path),
+            (Value::Text(text), Expect::Quantity(kind, bounds)) => self.quantity(node, &text, *kind, *bounds, path),
+            (Value::Text(text), Expect::Property(kind, bounds)) if *kind != Kind::Number => self.quantity(node, &text, *kind, *bounds, path),
             (value @ (Value::Integer(_) | Value::Float(_)), Expect::Quantity(kind, _) | Expect::Property(kind, _)) if *kind != Kind::Number => {
                 let written = self.characters(&node.spot).to_owned();
                 let example = kind.examples().first().copied().unwrap_or_default();
@@ -89,9 +89,7 @@ impl Form<'_> {
                     self.input(node, path, InputValue::Word(word.clone()), Kind::Number);
                     node.value = Value::Text(word);
                 } else {
-                    node.value = Value::Text(word.clone());
                     let spot = node.words();
-                    node.value = Value::Bad;
                     let mut found = Diagnostic::error("unknown-word", format!("\"{word}\" is not one of the words that may stand here"));
                     found
                         .help
@@ -104,12 +102,11 @@ impl Form<'_> {
                 node.value = Value::Text(text);
             }
             (Value::Text(name), Expect::Name) => {
-                let fault = names::fault(&name);
-                node.value = Value::Text(name);
-                if let Some((code, message)) = fault {
-                    let spot = node.words();
-                    node.value = Value::Bad;
-                    self.findings.at(&spot, Diagnostic::error(code, message).label("choose another name"));
+                if let Some((code, message)) = names::fault(&name) {
+                    self.findings
+                        .at(&node.words(), Diagnostic::error(code, message).label("choose another name"));
+                } else {
+                    node.value = Value::Text(name);
                 }
             }
             (Value::List(mut items), Expect::List(item)) => {
@@ -171,12 +168,10 @@ impl Form<'_> {
         node.value = Value::List(items);
     }
 
-    fn quantity(&mut self, node: &mut Node, text: String, kind: Kind, bounds: Bounds, path: &str) {
-        match units::read(&text, kind) {
+    fn quantity(&mut self, node: &mut Node, text: &str, kind: Kind, bounds: Bounds, path: &str) {
+        match units::read(text, kind) {
             Ok(number) => {
-                node.value = Value::Text(text);
                 let spot = node.words();
-                node.value = Value::Bad;
                 if self.in_bounds(&spot, number, bounds, kind, path) {
                     node.value = Value::Number(number);
                     self.input(node, path, InputValue::Number(number), kind);

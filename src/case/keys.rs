@@ -300,11 +300,7 @@ const LIMIT: Expect = Expect::OneOf(&[temperature(), Expect::Section(&LIMIT_TABL
 
 static LIMIT_TABLE: Section = Section {
     title: "a limit",
-    keys: &[
-        required("value", temperature()),
-        key("kind", Expect::Word(LIMIT_KINDS)),
-        key("for", time()),
-    ],
+    keys: &[key("value", temperature()), key("kind", Expect::Word(LIMIT_KINDS)), key("for", time())],
 };
 
 static JOINT: Section = Section {
@@ -459,8 +455,8 @@ pub(super) static MATERIAL: Section = Section {
 static EMISSIVITIES: Section = Section {
     title: "an emissivity",
     keys: &[
-        required("bare", Expect::Property(Kind::Number, SHARE)),
-        required("oxidised", Expect::Property(Kind::Number, SHARE)),
+        key("bare", Expect::Property(Kind::Number, SHARE)),
+        key("oxidised", Expect::Property(Kind::Number, SHARE)),
     ],
 };
 

@@ -104,7 +104,7 @@ fn read_tree(text: &str, source: usize, findings: &mut Findings) -> (Node, bool)
     let root = Node {
         spot: Spot { source, range: 0..0 },
         value: Value::Table(Table::of(table.get_ref(), source, text)),
-        text_start: None,
+        text_range: None,
     };
     (root, errors.is_empty())
 }
