@@ -276,7 +276,7 @@ impl Form<'_> {
         if !number.is_finite() || below || number > bounds.most {
             let least = if bounds.above { "above" } else { "at least" };
             let due = match (bounds.least.is_finite(), bounds.most.is_finite()) {
-                _ if kind == Kind::Temperature => "a temperature above absolute zero is due".to_owned(),
+                _ if kind == Kind::Temperature && below => "a temperature above absolute zero is due".to_owned(),
                 (true, true) if bounds.above => format!("a value above {}{unit}, at most {}{unit}, is due", bounds.least, bounds.most),
                 (true, true) => format!("a value from {}{unit} to {}{unit} is due", bounds.least, bounds.most),
                 (true, false) => format!("a value {least} {}{unit} is due", bounds.least),
