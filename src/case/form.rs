@@ -93,7 +93,7 @@ impl Form<'_> {
                     let mut found = Diagnostic::error("unknown-word", format!("\"{word}\" is not one of the words that may stand here"));
                     found
                         .help
-                        .extend(suggest::nearest(&word, words.iter().copied()).map(|near| format!("did you mean \"{near}\"?")));
+                        .extend(suggest::nearest(&word, words.iter().copied()).map(suggest::did_you_mean));
                     self.findings.at(&spot, found.help(format!("one of: {}", words.join(", "))));
                 }
             }
@@ -275,16 +275,17 @@ impl Form<'_> {
         let below = number < bounds.least || (bounds.above && number <= bounds.least);
         if !number.is_finite() || below || number > bounds.most {
             let least = if bounds.above { "above" } else { "at least" };
+            let (from, to) = (plain(bounds.least), plain(bounds.most));
             let due = match (bounds.least.is_finite(), bounds.most.is_finite()) {
                 _ if kind == Kind::Temperature && below => "a temperature above absolute zero is due".to_owned(),
-                (true, true) if bounds.above => format!("a value above {}{unit}, at most {}{unit}, is due", bounds.least, bounds.most),
-                (true, true) => format!("a value from {}{unit} to {}{unit} is due", bounds.least, bounds.most),
-                (true, false) => format!("a value {least} {}{unit} is due", bounds.least),
-                (false, true) => format!("a value of at most {}{unit} is due", bounds.most),
+                (true, true) if bounds.above => format!("a value above {from}{unit}, at most {to}{unit}, is due"),
+                (true, true) => format!("a value from {from}{unit} to {to}{unit} is due"),
+                (true, false) => format!("a value {least} {from}{unit} is due"),
+                (false, true) => format!("a value of at most {to}{unit} is due"),
                 (false, false) => "a finite number is due".to_owned(),
             };
             let message = if number.is_finite() {
-                format!("{number}{unit} makes no sense here")
+                format!("{} makes no sense here", self.characters(spot))
             } else {
                 "this is no finite number".to_owned()
             };
@@ -433,5 +434,14 @@ pub(super) fn due(expect: &Expect) -> String {
         Expect::Sections(section) => format!("a list of tables is due: {}", section.title),
         Expect::OneOf(choices) => choices.iter().map(due).collect::<Vec<_>>().join("; or "),
         Expect::Free => "a value is due".to_owned(),
+    }
+}
+
+/// A number for a message: short, whatever its size.
+fn plain(number: f64) -> String {
+    if number != 0.0 && !(1e-4..1e7).contains(&number.abs()) {
+        format!("{number:e}")
+    } else {
+        number.to_string()
     }
 }

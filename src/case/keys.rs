@@ -163,7 +163,7 @@ pub(super) const PHASES: &[&str] = &["burn", "hold", "shutdown"];
 pub(super) const PLACES: &[&str] = &["hot-face", "outer-face", "everywhere"];
 
 pub(super) static CASE: Section = Section {
-    title: "a case file",
+    title: "the case file",
     keys: &[
         required("soakdown", Expect::Whole(i128::MIN, i128::MAX)),
         key("title", Expect::Text),

@@ -194,7 +194,8 @@ fn section_of(list: &'static Expect, section: &'static Section) -> &'static Expe
 
 fn table_of<'a>(node: Option<&'a Node>, segment: &Segment) -> Result<Option<&'a Table>, PathError> {
     match node {
-        None => Ok(None),
+        // What is wrong with a bad value is reported already.
+        None | Some(Node { value: Value::Bad, .. }) => Ok(None),
         Some(Node {
             value: Value::Table(table), ..
         }) => Ok(Some(table)),

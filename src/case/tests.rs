@@ -585,7 +585,7 @@ fn nonsense_set_on_any_path_is_told() -> Outcome {
 fn torn_files_are_told() -> Outcome {
     let folder = tempfile::tempdir()?;
     let path = folder.path().join("case.toml");
-    for (index, letter) in CHAMBER.char_indices() {
+    for (index, letter) in CHAMBER.char_indices().step_by(3) {
         for text in [
             CHAMBER[..index].to_owned(),
             format!("{}{}", &CHAMBER[..index], &CHAMBER[index + letter.len_utf8()..]),

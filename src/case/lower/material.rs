@@ -135,12 +135,9 @@ impl Lowering<'_> {
             let text = format!("the case's own material \"{name}\" takes the place of the built-in one of this name");
             self.findings.notice("material-replaced", text, None, None);
         }
-        let Some(spot) = own
+        let spot = own
             .map(|node| node.spot.clone())
-            .or_else(|| card.as_ref().map(|_| Spot { source: 0, range: 0..0 }))
-        else {
-            return None;
-        };
+            .or_else(|| card.as_ref().map(|_| Spot { source: 0, range: 0..0 }))?;
         if card.is_none() {
             for key in NEEDED.into_iter().filter(|key| own_table.is_some_and(|table| !table.has(key))) {
                 self.missing(&spot, key, "for a material of one's own");
