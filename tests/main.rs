@@ -1,1 +1,4 @@
-//! tests
+//! Checks of the whole against something outside it, and of the program as people use it. One binary: it links once.
+
+mod house;
+mod walls;

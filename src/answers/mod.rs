@@ -1,5 +1,14 @@
 //! Decisions drawn from runs: one file a question.
 
+mod accuracy;
+mod check;
+mod pass;
 mod run;
+mod steady;
+mod types;
 
-pub use run::*;
+pub use accuracy::{Resolved, resolve};
+pub use check::{CheckAnswers, HeatingCheck, PhaseCheck, StationCheck, check};
+pub use pass::{Pass, PassSettings};
+pub use run::{RunOptions, RunOutcome, run};
+pub use types::*;

@@ -1,368 +1,493 @@
-//! What happens: the answers of one run.
-//!
-//! Plain SI numbers: temperatures in kelvin, times in seconds from the start of the profile, areas per hot face, as `RESULTS` lists them.
+//! What happens: peaks, margins, soak-back, approach to steady state, waits, energy balance.
 
-use crate::model::{JoulesPerSquareMetre, Kelvin, KelvinDifference, LimitKind, LimitOrigin, Metres, PhaseKind, Seconds, WattsPerSquareMetre};
+use super::accuracy::{Resolved, STEP_SHARE, resolve};
+use super::pass::{Keep, LevelOf, Pass, PassSettings, kept, limits};
+use super::steady::{Burn, steady};
+use super::types::*;
+use crate::model::{HeatingModel, Kelvin, Limit, Model, PhaseKind, Place, Seconds, Shape, Station};
+use crate::run::{Peak, Quantity, Rest, Row, RunError, SAME};
+use std::sync::atomic::AtomicBool;
 
-/// How the case stands, worst first.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
-pub enum Verdict {
-    /// A melting point was passed: the numbers no longer describe the wall.
-    OutsideModel,
-    /// A limit is not kept.
-    OverLimit,
-    /// Every limit is kept, but not with the allowance taken.
-    InsideAllowance,
-    /// Nothing has a limit.
-    NoLimits,
-    /// Every limit is kept.
-    WithinLimits,
+/// What to compute beside the answers.
+#[derive(Clone, Default)]
+pub struct RunOptions<'a> {
+    /// Whether to keep histories to write.
+    pub history: bool,
+    /// Exactly these rows in the trace; empty: the program's own, dense enough to draw.
+    pub times: Vec<Seconds>,
+    /// Set from outside to stop.
+    pub stop: Option<&'a AtomicBool>,
+    /// Told the share of the work done, as far as it is known.
+    pub progress: Option<&'a (dyn Fn(f64) + Sync)>,
 }
 
-/// The answers of one run.
+/// Answers, and histories if asked for: one for each station, with rows at the same clocks.
 #[derive(Clone, Debug)]
-pub struct RunAnswers {
-    /// How the case stands.
-    pub verdict: Verdict,
-    /// Where the margin is smallest; `None` without limits.
-    pub worst: Option<Worst>,
-    /// Layers without a limit, as `station/layer`.
-    pub without_limit: Vec<String>,
-    /// End of the last burn (the command); `None` without a burn.
-    pub last_burn_end: Option<Seconds>,
-    /// The clock to which every station was computed.
-    pub computed_until: Seconds,
-    /// One for each station, in file order.
-    pub stations: Vec<StationAnswers>,
-    /// What was found while running.
-    pub findings: Vec<Finding>,
+pub struct RunOutcome {
+    /// The answers.
+    pub answers: RunAnswers,
+    /// The histories.
+    pub histories: Vec<StationHistory>,
 }
 
-/// The place of the smallest margin.
-#[derive(Clone, Debug)]
-pub struct Worst {
-    /// The station's name.
-    pub station: String,
-    /// The place's name.
-    pub place: String,
-    /// Limit − allowance − peak.
-    pub margin: KelvinDifference,
+/// Points that get this much hotter after the last burn have a soak-back peak.
+const SOAKS: f64 = 1.0;
+
+/// Runs a model.
+///
+/// # Errors
+/// When the integrator gives up or the run was stopped.
+pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunError> {
+    let written_end = model.profile.starts().last().copied().unwrap_or(0.0);
+    let count = model.stations.len();
+    let asked = options.times.iter().copied().fold(0.0, f64::max);
+    let mut resolved = Vec::with_capacity(count);
+    for index in 0..count {
+        let share = |clock: Seconds| (index as f64 + (clock / written_end.max(1.0)).min(1.0)) / (2 * count) as f64;
+        let progress = options.progress.map(|progress| move |clock: Seconds| progress(share(clock)));
+        let progress = progress.as_ref().map(|progress| progress as &(dyn Fn(Seconds) + Sync));
+        resolved.push(resolve(
+            model,
+            index,
+            &PassSettings {
+                stop: options.stop,
+                progress,
+                ..PassSettings::default()
+            },
+        )?);
+    }
+    let until = resolved
+        .iter()
+        .map(|resolved| resolved.pass.watcher.computed_until())
+        .fold(asked, f64::max);
+    let step_ends = if options.history && options.times.is_empty() {
+        own_times(model, &resolved, until, options)?
+    } else {
+        Vec::new()
+    };
+    let times = if options.times.is_empty() { step_ends } else { sorted(&options.times) };
+    let mut stations = Vec::with_capacity(count);
+    let mut histories = Vec::new();
+    let mut findings = Vec::new();
+    let mut inside = true;
+    for (index, resolved) in resolved.iter().enumerate() {
+        let station = &model.stations[index];
+        let last_burn_start = model.profile.last_burn().map(|burn| model.profile.starts()[burn]);
+        let settings = PassSettings {
+            step_tolerance: STEP_SHARE * model.tolerance,
+            until: Some(until),
+            stop: options.stop,
+            ..PassSettings::default()
+        };
+        let mut keep = Keep {
+            profile_times: last_burn_start.into_iter().collect(),
+            ..Keep::default()
+        };
+        if options.history {
+            keep.times.clone_from(&times);
+            keep.both_sides = options.times.is_empty();
+            keep.profile_times.extend(profile_times(model, &resolved.pass, until, &options.times));
+            keep.profile_times.sort_by(f64::total_cmp);
+            keep.profile_times.dedup();
+        }
+        let mut pass = Pass::of_profile(model, index, &resolved.grid, &settings, &keep)?;
+        let from = last_burn_start.and_then(|start| pass.profiles.iter().find(|profile| profile.0 == start));
+        let from: Vec<Kelvin> = from.map(|profile| profile.1.iter().map(|point| point.1).collect()).unwrap_or_default();
+        let state = match (last_burn_start, pass.watcher.burnt()) {
+            (Some(start), Some(burnt)) => {
+                let from = if start > 0.0 { &from[..] } else { &[] };
+                steady(
+                    model,
+                    index,
+                    &resolved.grid,
+                    &settings,
+                    &Burn {
+                        start,
+                        from,
+                        at_end: &burnt.at_end,
+                    },
+                )?
+            }
+            _ => Steady::None,
+        };
+        inside &= model.allowance.given && keeps_allowance(model, index, resolved, options)?;
+        findings.extend(found(model, station, &pass, resolved));
+        stations.push(answers(model, index, &pass, resolved, state));
+        if options.history {
+            histories.push(history(&mut pass));
+        }
+        if let Some(progress) = options.progress {
+            progress(0.5 + 0.5 * (index + 1) as f64 / count as f64);
+        }
+    }
+    let inside = inside || !model.allowance.given;
+    let answers = RunAnswers {
+        verdict: verdict(model, &stations, &findings, inside),
+        worst: worst(&stations),
+        without_limit: without_limit(model),
+        last_burn_end: model.profile.last_burn_end(),
+        computed_until: until,
+        stations,
+        findings,
+    };
+    Ok(RunOutcome { answers, histories })
 }
 
-/// The answers of one station.
-#[derive(Clone, Debug)]
-pub struct StationAnswers {
-    /// Its name.
-    pub name: String,
-    /// Mass per area of the hot face, kg/m².
-    pub mass: f64,
-    /// Thickness of the wall.
-    pub thickness: Metres,
-    /// One for each layer.
-    pub layers: Vec<LayerAnswer>,
-    /// One for each boundary between layers.
-    pub joints: Vec<JointAnswer>,
-    /// The heated face.
-    pub hot_face: PlaceAnswer,
-    /// The face away from the heat.
-    pub outer_face: PlaceAnswer,
-    /// One for each probe.
-    pub probes: Vec<ProbeAnswer>,
-    /// What happened after the last burn.
-    pub soak_back: SoakBack,
-    /// From when on hottest − coolest stays below 1 K.
-    pub evened_out: EvenedOut,
-    /// If the last burn went on for ever.
-    pub steady: Steady,
-    /// One for each question at this station.
-    pub waits: Vec<WaitAnswer>,
-    /// The heat's bookkeeping.
-    pub energy: Energy,
-    /// How well it was computed.
-    pub numerical: Numerical,
+/// Whether every limit of a station is kept with the allowance taken off it and put on the heating.
+fn keeps_allowance(model: &Model, index: usize, resolved: &Resolved, options: &RunOptions<'_>) -> Result<bool, RunError> {
+    let doubted = model.with_heating_times(model.allowance.heating);
+    let settings = PassSettings {
+        step_tolerance: STEP_SHARE * model.tolerance,
+        off_limits: model.allowance.limits,
+        stop: options.stop,
+        ..PassSettings::default()
+    };
+    let pass = Pass::of_profile(&doubted, index, &resolved.grid, &settings, &Keep::default())?;
+    Ok(pass.keeps_limits(&model.stations[index]))
 }
 
-/// A layer's peak and limit.
-#[derive(Clone, Debug)]
-pub struct LayerAnswer {
-    /// Its name.
-    pub name: String,
-    /// Its material's name.
-    pub material: String,
-    /// Over all time and depth, its faces included.
-    pub at: PlaceAnswer,
+fn verdict(model: &Model, stations: &[StationAnswers], findings: &[Finding], inside: bool) -> Verdict {
+    let limited = |station: &Station| !limits(station).is_empty();
+    if findings.iter().any(|finding| matches!(finding, Finding::Melts { .. })) {
+        return Verdict::OutsideModel;
+    }
+    if places(stations).any(|(_, _, at)| at.limit.as_ref().is_some_and(|limit| !limit.kept)) {
+        return Verdict::OverLimit;
+    }
+    if !model.stations.iter().any(limited) {
+        return Verdict::NoLimits;
+    }
+    if inside { Verdict::WithinLimits } else { Verdict::InsideAllowance }
 }
 
-/// A boundary's peak and limit, at its hotter side.
-#[derive(Clone, Debug)]
-pub struct JointAnswer {
-    /// Names of the layers on both sides.
-    pub between: [String; 2],
-    /// Its hotter side.
-    pub at: PlaceAnswer,
+/// Every place with its station's and its own name.
+fn places(stations: &[StationAnswers]) -> impl Iterator<Item = (&str, String, &PlaceAnswer)> {
+    stations.iter().flat_map(|station| {
+        let layers = station.layers.iter().map(|layer| (layer.name.clone(), &layer.at));
+        let joints = station.joints.iter().map(|joint| (joint.between.join("|"), &joint.at));
+        let faces = [("hot-face".to_owned(), &station.hot_face), ("outer-face".to_owned(), &station.outer_face)];
+        layers.chain(joints).chain(faces).map(|(place, at)| (station.name.as_str(), place, at))
+    })
 }
 
-/// The hottest moment of a place, and its limit.
-#[derive(Clone, Debug, PartialEq)]
-pub struct PlaceAnswer {
-    /// The hottest it gets.
-    pub peak: Kelvin,
-    /// When.
-    pub peak_time: Seconds,
-    /// In which kind of phase; at a change, the ending one.
-    pub peak_phase: PhaseKind,
-    /// At which depth.
-    pub peak_depth: Metres,
-    /// Its limit, if it has one.
-    pub limit: Option<LimitAnswer>,
+fn worst(stations: &[StationAnswers]) -> Option<Worst> {
+    places(stations)
+        .filter_map(|(station, place, at)| at.limit.as_ref().map(|limit| (station, place, limit)))
+        .filter(|(_, _, limit)| limit.margin >= 0.0 || !limit.kept)
+        .min_by(|a, b| a.2.margin.total_cmp(&b.2.margin))
+        .map(|(station, place, limit)| Worst {
+            station: station.to_owned(),
+            place,
+            margin: limit.margin,
+        })
 }
 
-/// How a limit was kept.
-#[derive(Clone, Debug, PartialEq)]
-pub struct LimitAnswer {
-    /// The limit.
-    pub limit: Kelvin,
-    /// What it protects.
-    pub kind: LimitKind,
-    /// Whose it is.
-    pub origin: LimitOrigin,
-    /// What the allowance takes off it.
-    pub allowance: KelvinDifference,
-    /// Limit − allowance − peak.
-    pub margin: KelvinDifference,
-    /// When the limit itself was first passed.
-    pub first_over: Option<Seconds>,
-    /// Total time above the limit itself.
-    pub time_over: Seconds,
-    /// Total time allowed above it.
-    pub allowed_over: Seconds,
-    /// Whether the limit is kept: never passed, or no longer than allowed.
-    pub kept: bool,
+fn without_limit(model: &Model) -> Vec<String> {
+    let of = |station: &Station| {
+        let name = station.name.clone();
+        station
+            .layers
+            .iter()
+            .filter(|layer| layer.limit.is_none())
+            .map(move |layer| format!("{name}/{}", layer.name))
+            .collect::<Vec<_>>()
+    };
+    model.stations.iter().flat_map(of).collect()
 }
 
-/// What a probe reads at most.
-#[derive(Clone, Debug)]
-pub struct ProbeAnswer {
-    /// Its name.
-    pub name: String,
-    /// Its depth from the hot face.
-    pub depth: Metres,
-    /// The highest reading.
-    pub peak: Kelvin,
-    /// When it reads that.
-    pub peak_time: Seconds,
-    /// The highest temperature of the wall there.
-    pub peak_true: Kelvin,
+fn answers(model: &Model, index: usize, pass: &Pass, resolved: &Resolved, state: Steady) -> StationAnswers {
+    let station = &model.stations[index];
+    let at = |place: Place, limit: Option<&Limit>| place_answer(model, pass, place, limit);
+    let layers = station.layers.iter().enumerate().map(|(index, layer)| LayerAnswer {
+        name: layer.name.clone(),
+        material: layer.material.name.clone(),
+        at: at(Place::Layer(index), layer.limit.as_ref()),
+    });
+    let joints = station.layers.windows(2).enumerate().map(|(index, pair)| JointAnswer {
+        between: [pair[0].name.clone(), pair[1].name.clone()],
+        at: at(Place::Joint(index), pair[0].joint.as_ref().and_then(|joint| joint.limit.as_ref())),
+    });
+    let probes = station.probes.iter().enumerate().map(|(index, probe)| {
+        let reading = peak_of(pass, Quantity::Place(Place::Probe(index)));
+        ProbeAnswer {
+            name: probe.name.clone(),
+            depth: probe.depth,
+            peak: reading.value,
+            peak_time: reading.clock,
+            peak_true: peak_of(pass, Quantity::Truth(index)).value,
+        }
+    });
+    let [inward, outward, stored] = pass.heat;
+    let [gross_inward, gross_outward] = pass.watcher.gross();
+    let scale = gross_inward.max(gross_outward).max(10.0 * pass.capacity);
+    StationAnswers {
+        name: station.name.clone(),
+        mass: station.mass(),
+        thickness: station.thickness(),
+        layers: layers.collect(),
+        joints: joints.collect(),
+        hot_face: at(Place::HotFace, None),
+        outer_face: at(Place::OuterFace, station.outer.limit.as_ref()),
+        probes: probes.collect(),
+        soak_back: soak_back(pass),
+        evened_out: evened_out(resolved),
+        steady: state,
+        waits: waits(model, index, resolved),
+        energy: Energy {
+            inward,
+            gross_inward,
+            outward,
+            gross_outward,
+            stored,
+            imbalance: (inward - outward - stored).abs() / scale,
+        },
+        numerical: Numerical {
+            nodes: pass.map.len(),
+            steps: pass.steps,
+            estimated_error: resolved.estimated_error,
+        },
+    }
 }
 
-/// Stored heat on its way outwards after the last burn.
-#[derive(Clone, Debug)]
-pub struct SoakBack {
-    /// How much hotter the outer face still gets after the end of the last burn; 0 if it only cools.
-    pub outer_face_rise: KelvinDifference,
-    /// When it is hottest; the end of the last burn if it only cools.
-    pub outer_face_peak: Seconds,
-    /// The latest peak of any point that gets at least 1 K hotter after the last burn: time and depth.
-    pub last_peak: Option<(Seconds, Metres)>,
+/// The peak of a quantity that every pass watches.
+fn peak_of(pass: &Pass, quantity: Quantity) -> Peak {
+    pass.peak(quantity).unwrap_or(Peak {
+        value: 0.0,
+        clock: 0.0,
+        kind: PhaseKind::Shutdown,
+        depth: 0.0,
+    })
 }
 
-/// From when on the wall is level.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum EvenedOut {
-    /// From this clock on, hottest − coolest stays below 1 K.
-    From(Seconds),
-    /// The last phase's steady state itself has a larger difference.
-    Never,
-    /// Not within 100 h.
-    Beyond,
+fn place_answer(model: &Model, pass: &Pass, place: Place, limit: Option<&Limit>) -> PlaceAnswer {
+    let peak = peak_of(pass, Quantity::Place(place));
+    let crossings = pass.crossings(LevelOf::Limit(place)).map(|(_, _, crossings)| crossings);
+    let limit = limit.zip(crossings).map(|(limit, crossings)| LimitAnswer {
+        limit: limit.temperature,
+        kind: limit.kind,
+        origin: limit.origin,
+        allowance: model.allowance.limits,
+        margin: limit.temperature - model.allowance.limits - peak.value,
+        first_over: crossings.first_above,
+        time_over: crossings.time_above,
+        allowed_over: limit.allowed_over,
+        kept: kept(limit, &crossings),
+    });
+    PlaceAnswer {
+        peak: peak.value,
+        peak_time: peak.clock,
+        peak_phase: peak.kind,
+        peak_depth: peak.depth,
+        limit,
+    }
 }
 
-/// If the last burn went on for ever, everything of that phase held.
-#[derive(Clone, Debug, PartialEq)]
-pub enum Steady {
-    /// There is none: no burn, a heating log, or nothing balances the heat.
-    None,
-    /// There is one.
-    At(SteadyState),
+fn soak_back(pass: &Pass) -> SoakBack {
+    let origin = pass.watcher.last_burn_end();
+    let Some(burnt) = pass.watcher.burnt() else {
+        return SoakBack {
+            outer_face_rise: 0.0,
+            outer_face_peak: origin,
+            last_peak: None,
+        };
+    };
+    let last = burnt.peak.len() - 1;
+    let rising = (0..=last).filter(|node| burnt.peak[*node].0 - burnt.at_end[*node] >= SOAKS);
+    let latest = rising.max_by(|a, b| burnt.peak[*a].1.total_cmp(&burnt.peak[*b].1));
+    SoakBack {
+        outer_face_rise: burnt.peak[last].0 - burnt.at_end[last],
+        outer_face_peak: burnt.peak[last].1,
+        last_peak: latest.map(|node| (burnt.peak[node].1, pass.map.depths[node])),
+    }
 }
 
-/// The steady state of an endless last burn.
-#[derive(Clone, Debug, PartialEq)]
-pub struct SteadyState {
-    /// Hot face.
-    pub hot_face: Kelvin,
-    /// Outer face.
-    pub outer_face: Kelvin,
-    /// (T at the end of the burn − start)/(steady − start) at the hot face; `None` if that is below 1 K.
-    pub hot_face_reached: Option<f64>,
-    /// The same at the outer face.
-    pub outer_face_reached: Option<f64>,
-    /// Of the endless burn, from its start until both faces have 95 %; `None` if that takes more than 100 h.
-    pub time_to_95_percent: Option<Seconds>,
-    /// Whether the steady profile, the way to it and the soak-back from it keep every limit.
-    pub within_limits: bool,
+fn evened_out(resolved: &Resolved) -> EvenedOut {
+    let pass = &resolved.pass;
+    let Some((level, quantity, crossings)) = pass.crossings(LevelOf::Even) else {
+        return EvenedOut::Beyond;
+    };
+    if pass.watcher.last_phase().outcome(quantity, &pass.map, level) == Rest::Above {
+        return EvenedOut::Never;
+    }
+    match crossings.last_down {
+        _ if crossings.above => EvenedOut::Beyond,
+        Some((clock, _)) => EvenedOut::From(clock),
+        None => EvenedOut::From(0.0),
+    }
 }
 
-/// The answer to a cool-down question.
-#[derive(Clone, Debug)]
-pub struct WaitAnswer {
-    /// The question's name.
-    pub name: String,
-    /// The place's name.
-    pub place: String,
-    /// The value.
-    pub below: Kelvin,
-    /// What the value stands for, if the case says so.
-    pub meaning: Option<String>,
-    /// The answer.
-    pub state: WaitState,
+fn waits(model: &Model, index: usize, resolved: &Resolved) -> Vec<WaitAnswer> {
+    let station = &model.stations[index];
+    let pass = &resolved.pass;
+    let origin = pass.watcher.last_burn_end();
+    let asked = model.waits.iter().enumerate().filter(|(_, wait)| wait.station == index);
+    asked
+        .filter_map(|(question, wait)| {
+            let (level, quantity, crossings) = pass.crossings(LevelOf::Wait(question))?;
+            // From above, nothing comes down to its own surroundings.
+            let ends_above = pass.watcher.last_phase().outcome(quantity, &pass.map, level - SAME) == Rest::Above;
+            let was_above = crossings.above || crossings.last_down.is_some_and(|down| down.0 > origin);
+            let rises_above = pass.watcher.last_phase().outcome(quantity, &pass.map, level + SAME) == Rest::Above;
+            let state = if rises_above || (ends_above && was_above) {
+                WaitState::Never
+            } else if crossings.above {
+                WaitState::Beyond
+            } else {
+                match crossings.last_down {
+                    Some((clock, slope)) if clock > origin => WaitState::Cools {
+                        wait: clock - origin,
+                        clock,
+                        slope: -1.0 / slope,
+                    },
+                    _ => WaitState::StaysBelow { clock: origin },
+                }
+            };
+            Some(WaitAnswer {
+                name: wait.name.clone(),
+                place: station.place_name(wait.place),
+                below: wait.below,
+                meaning: wait.meaning.clone(),
+                state,
+            })
+        })
+        .collect()
 }
 
-/// How long until a place stays below a value.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum WaitState {
-    /// It comes down to the value for the last time.
-    Cools {
-        /// From the end of the last burn (without a burn: from 0).
-        wait: Seconds,
-        /// The clock then.
-        clock: Seconds,
-        /// How much longer for each kelvin lower, s/K.
-        slope: f64,
-    },
-    /// It is never above it after the last burn; the clock from which that holds.
-    StaysBelow {
-        /// End of the last burn, or 0.
-        clock: Seconds,
-    },
-    /// The surroundings of the last phase hold it above.
-    Never,
-    /// Not decided within 100 h.
-    Beyond,
+fn found(model: &Model, station: &Station, pass: &Pass, resolved: &Resolved) -> Vec<Finding> {
+    let name = || station.name.clone();
+    let mut findings = Vec::new();
+    for (index, (level, of)) in pass.plan.levels.iter().enumerate() {
+        let crossings = pass.watcher.crossings()[index];
+        let Some(first) = crossings.first_above else { continue };
+        let layer = |layer: usize| station.layers[layer].name.clone();
+        let peak = pass.watcher.peaks()[level.quantity].map_or(level.value, |peak| peak.value);
+        match *of {
+            LevelOf::Melts(at) => findings.push(Finding::Melts {
+                station: name(),
+                layer: layer(at),
+                at: level.value,
+                first,
+            }),
+            LevelOf::Decomposes(at) => findings.push(Finding::Decomposes {
+                station: name(),
+                layer: layer(at),
+                at: level.value,
+                first,
+            }),
+            LevelOf::Table {
+                layer: at,
+                property,
+                end,
+                hot_end,
+            } => findings.push(Finding::TableLeft {
+                station: name(),
+                layer: layer(at),
+                property,
+                hot_end,
+                by: if hot_end { peak - end } else { end + peak },
+                lasting: crossings.time_above,
+            }),
+            LevelOf::Limit(_) | LevelOf::Wait(_) | LevelOf::Even => {}
+        }
+    }
+    if let Some(HeatingModel::Log(rows)) = station.heating.as_ref().map(|heating| &heating.model) {
+        let longest = model
+            .profile
+            .phases()
+            .iter()
+            .filter(|phase| phase.kind() == PhaseKind::Burn)
+            .map(|phase| phase.duration())
+            .fold(0.0, f64::max);
+        if longest > rows.end() {
+            findings.push(Finding::LogHeld {
+                station: name(),
+                lasting: longest - rows.end(),
+            });
+        }
+    }
+    if let (Shape::Cylinder { inner_radius }, Some(end)) = (station.shape, model.profile.last_burn_end()) {
+        let sum = |value: &dyn Fn(usize) -> f64| (0..station.layers.len()).map(value).sum::<f64>();
+        let layer = |index: usize| &station.layers[index];
+        let conducts = sum(&|index| layer(index).material.conductivity.value(model.start) * layer(index).thickness);
+        let holds = sum(&|index| layer(index).material.density * layer(index).material.heat_capacity.value(model.start) * layer(index).thickness);
+        let diffusion_length = (conducts / holds * end).sqrt();
+        if diffusion_length > inner_radius {
+            findings.push(Finding::Sideways {
+                station: name(),
+                diffusion_length,
+            });
+        }
+    }
+    if resolved.estimated_error > model.tolerance {
+        findings.push(Finding::Inaccurate {
+            station: name(),
+            estimated_error: resolved.estimated_error,
+        });
+    }
+    findings
 }
 
-/// The heat's bookkeeping, per area of the hot face, to `computed_until`.
-#[derive(Clone, Debug)]
-pub struct Energy {
-    /// Net heat into the wall over the hot face.
-    pub inward: JoulesPerSquareMetre,
-    /// What came in over the hot face, without what went back.
-    pub gross_inward: JoulesPerSquareMetre,
-    /// Net heat out over the outer face.
-    pub outward: JoulesPerSquareMetre,
-    /// What went out over the outer face, without what came back.
-    pub gross_outward: JoulesPerSquareMetre,
-    /// What the wall holds more than at the start.
-    pub stored: JoulesPerSquareMetre,
-    /// |in − out − stored| / max(gross in, gross out, capacity × 10 K): checks the bookkeeping, not the accuracy.
-    pub imbalance: f64,
+fn sorted(times: &[Seconds]) -> Vec<Seconds> {
+    let mut times = times.to_vec();
+    times.sort_by(f64::total_cmp);
+    times.dedup();
+    times
 }
 
-/// How well a station was computed.
-#[derive(Clone, Debug)]
-pub struct Numerical {
-    /// Unknown temperatures through the wall.
-    pub nodes: usize,
-    /// Accepted steps.
-    pub steps: usize,
-    /// Estimated error of peaks, crossings and phase ends, from a second solution on the half grid.
-    pub estimated_error: KelvinDifference,
+/// Clocks dense enough to draw every curve of every station.
+fn own_times(model: &Model, resolved: &[Resolved], until: Seconds, options: &RunOptions<'_>) -> Result<Vec<Seconds>, RunError> {
+    let mut times = vec![0.0];
+    for (index, resolved) in resolved.iter().enumerate() {
+        let settings = PassSettings {
+            step_tolerance: STEP_SHARE * model.tolerance,
+            until: Some(until),
+            stop: options.stop,
+            ..PassSettings::default()
+        };
+        let keep = Keep {
+            both_sides: true,
+            ..Keep::default()
+        };
+        let pass = Pass::of_profile(model, index, &resolved.grid, &settings, &keep)?;
+        let mut before = 0.0;
+        for (end, rows) in pass.step_ends {
+            times.extend((1..rows).map(|row| before + (end - before) * row as f64 / rows as f64));
+            times.push(end);
+            before = end;
+        }
+    }
+    times.extend(model.profile.starts());
+    Ok(sorted(&times))
 }
 
-/// Something found while running that a person must know.
-#[derive(Clone, Debug, PartialEq)]
-pub enum Finding {
-    /// A property was used outside its table by more than 20 K.
-    TableLeft {
-        /// The station's name.
-        station: String,
-        /// The layer's name.
-        layer: String,
-        /// `conductivity`, `heat_capacity` or `emissivity`.
-        property: &'static str,
-        /// Whether at the hot end.
-        hot_end: bool,
-        /// By how much at most.
-        by: KelvinDifference,
-        /// For how long it was more than 20 K outside.
-        lasting: Seconds,
-    },
-    /// A layer's melting point was passed.
-    Melts {
-        /// The station's name.
-        station: String,
-        /// The layer's name.
-        layer: String,
-        /// The melting point.
-        at: Kelvin,
-        /// When it was first passed.
-        first: Seconds,
-    },
-    /// A layer's decomposition temperature was passed.
-    Decomposes {
-        /// The station's name.
-        station: String,
-        /// The layer's name.
-        layer: String,
-        /// The temperature.
-        at: Kelvin,
-        /// When it was first passed.
-        first: Seconds,
-    },
-    /// A burn was longer than the heating log, whose last row was held.
-    LogHeld {
-        /// The station's name.
-        station: String,
-        /// How long the last row was held.
-        lasting: Seconds,
-    },
-    /// The lateral diffusion length exceeds half the diameter: one-dimensional heat flow is doubtful beside a throat.
-    Sideways {
-        /// The station's name.
-        station: String,
-        /// √(α t) to the end of the last burn.
-        diffusion_length: Metres,
-    },
-    /// The estimated error is above the promised tolerance.
-    Inaccurate {
-        /// The station's name.
-        station: String,
-        /// The estimate.
-        estimated_error: KelvinDifference,
-    },
+/// Clocks of whole profiles: changes of phase, asked times, telling times of the soak-back, the written end and the last clock.
+fn profile_times(model: &Model, pass: &Pass, until: Seconds, asked: &[Seconds]) -> Vec<Seconds> {
+    let starts = model.profile.starts();
+    let written_end = starts.last().copied().unwrap_or(0.0);
+    let origin = pass.watcher.last_burn_end();
+    let soaked = soak_back(pass).last_peak.map_or(written_end.min(until), |peak| peak.0);
+    let mut times = starts;
+    times.extend(asked);
+    times.extend([0.003, 0.01, 0.03, 0.1, 0.3, 1.0, 3.0].map(|share| origin + share * (soaked - origin)));
+    times.push(until);
+    times.retain(|time| *time <= until);
+    sorted(&times)
 }
 
-/// One row of a trace: everything drawn against time at one station.
-#[derive(Clone, Debug, PartialEq)]
-pub struct TraceRow {
-    /// The clock.
-    pub time: Seconds,
-    /// The phase it belongs to; at a change, there are two rows, the ending phase first.
-    pub phase: PhaseKind,
-    /// Hot face, then each boundary's inner and outer side (equal at a perfect joint), then the outer face, K.
-    pub faces: Vec<Kelvin>,
-    /// Each probe's reading and the wall's true temperature there, K.
-    pub probes: Vec<(Kelvin, Kelvin)>,
-    /// Heat into the wall over the hot face.
-    pub flux_in: WattsPerSquareMetre,
-    /// Heat out over the outer face, per area of that face.
-    pub flux_out: WattsPerSquareMetre,
-}
-
-/// A temperature profile through the wall at one time; a joint with a resistance gives two points of equal depth.
-#[derive(Clone, Debug, PartialEq)]
-pub struct DepthProfile {
-    /// The clock.
-    pub time: Seconds,
-    /// Depth and temperature, hot face first.
-    pub points: Vec<(Metres, Kelvin)>,
-}
-
-/// What is written beside the answers with `--out`: the histories of one station.
-#[derive(Clone, Debug, Default)]
-pub struct StationHistory {
-    /// Rows of the trace, in time order.
-    pub trace: Vec<TraceRow>,
-    /// Profiles through the wall, in time order.
-    pub depths: Vec<DepthProfile>,
+fn history(pass: &mut Pass) -> StationHistory {
+    let trace = std::mem::take(&mut pass.rows).into_iter().map(|row: Row| TraceRow {
+        time: row.clock,
+        phase: row.kind,
+        faces: row.faces,
+        probes: row.probes,
+        flux_in: row.flux_in,
+        flux_out: row.flux_out,
+    });
+    let depths = std::mem::take(&mut pass.profiles)
+        .into_iter()
+        .map(|(time, points)| DepthProfile { time, points });
+    StationHistory {
+        trace: trace.collect(),
+        depths: depths.collect(),
+    }
 }

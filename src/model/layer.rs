@@ -1,6 +1,6 @@
 //! Layers, the joints between them, and limits.
 
-use super::{Kelvin, Material, Metres, ModelError, Seconds, Table, WattsPerSquareMetreKelvin};
+use super::{Kelvin, Material, Metres, ModelError, Seconds, WattsPerSquareMetreKelvin};
 use std::sync::Arc;
 use uom::si::f64::{HeatTransfer, Length, ThermodynamicTemperature, Time};
 
@@ -10,8 +10,6 @@ pub struct Layer {
     pub(crate) name: String,
     pub(crate) material: Arc<Material>,
     pub(crate) thickness: Metres,
-    /// Emissivity against temperature, chosen from the material's bare and oxidised values.
-    pub(crate) emissivity: Table,
     pub(crate) limit: Option<Limit>,
     /// What lies between this layer and the next; `None`: perfect contact without a limit.
     pub(crate) joint: Option<Joint>,
@@ -21,16 +19,12 @@ impl Layer {
     /// A layer in perfect contact with the next, without a limit.
     ///
     /// # Errors
-    /// When the thickness is not above zero, or an emissivity is no share.
-    pub fn new(name: impl Into<String>, material: Arc<Material>, thickness: Length, emissivity: Table) -> Result<Self, ModelError> {
-        for point in emissivity.points() {
-            ModelError::share("emissivity", point.1)?;
-        }
+    /// When the thickness is not above zero.
+    pub fn new(name: impl Into<String>, material: Arc<Material>, thickness: Length) -> Result<Self, ModelError> {
         Ok(Self {
             name: name.into(),
             material,
             thickness: ModelError::above_zero("thickness", thickness.value)?,
-            emissivity,
             limit: None,
             joint: None,
         })

@@ -174,14 +174,30 @@ impl Station {
         self.layers.iter().map(|layer| layer.thickness).sum()
     }
 
+    /// Distance of each layer's hot side from the hot face, m: its depth, and in a cylinder the gaps before it, which push the outer layers out.
+    pub(crate) fn distances(&self) -> Vec<Metres> {
+        let boundaries = self.boundaries();
+        let mut gaps = 0.0;
+        (0..self.layers.len())
+            .map(|index| {
+                let distance = boundaries[index] + gaps;
+                if let Some(Resistance::Gap(gap)) = self.resistance(index) {
+                    gaps += gap.width;
+                }
+                distance
+            })
+            .collect()
+    }
+
     /// Mass per area of the hot face, kg/m².
     pub fn mass(&self) -> f64 {
-        let boundaries = self.boundaries();
-        self.layers
-            .iter()
-            .zip(boundaries.windows(2))
-            .map(|(layer, depth)| layer.material.density * self.shape.volume(depth[0], depth[1]))
-            .sum()
+        let part = |(layer, from): (&Layer, &Metres)| layer.material.density * self.shape.volume(*from, from + layer.thickness);
+        self.layers.iter().zip(&self.distances()).map(part).sum()
+    }
+
+    /// Distance of the outer face from the hot face, m, gaps included.
+    pub fn outer_distance(&self) -> Metres {
+        self.distances().last().copied().unwrap_or(0.0) + self.layers.last().map_or(0.0, |layer| layer.thickness)
     }
 
     /// What resists the heat between layer `index` and the next; `None`: perfect contact.

@@ -23,11 +23,19 @@ pub fn bracketed_root(mut function: impl FnMut(f64) -> f64, mut low: f64, mut hi
         }
         let secant = high - at_high * width / (at_high - at_low);
         // Every third round must have halved the bracket, else it is halved here.
-        let middle = if round % 3 == 2 && width.abs() > 0.5 * before.abs() { low + 0.5 * width } else { secant };
+        let middle = if round % 3 == 2 && width.abs() > 0.5 * before.abs() {
+            low + 0.5 * width
+        } else {
+            secant
+        };
         if round % 3 == 2 {
             before = width;
         }
-        let middle = if (middle - low) * (middle - high) < 0.0 { middle } else { low + 0.5 * width };
+        let middle = if (middle - low) * (middle - high) < 0.0 {
+            middle
+        } else {
+            low + 0.5 * width
+        };
         let value = function(middle);
         if value == 0.0 {
             return middle;

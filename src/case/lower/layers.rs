@@ -5,8 +5,6 @@ use super::quantities::{length, spoken};
 use super::{Lowering, Node, Table};
 use crate::case::names;
 use crate::model::{Layer, Limit, LimitOrigin, Table as Property};
-use uom::si::f64::Ratio;
-use uom::si::ratio::ratio;
 
 /// A layer on its way to the model, with what its neighbours and faces need to know of it.
 pub(super) struct LoweredLayer {
@@ -52,9 +50,7 @@ impl Lowering<'_> {
             self.tell_library_limit(station, &name, facts.material.name(), limit, facts.built_in_limit);
         }
         let layer = facts.zip(thickness).zip(limit).and_then(|((facts, thickness), limit)| {
-            // A layer inside the wall needs no emissivity; where one is needed and missing, the faces and gaps report it.
-            let emissivity = emissivity.clone().unwrap_or_else(|| Property::constant(Ratio::new::<ratio>(0.0)));
-            let layer = Layer::new(name.clone(), facts.material, length(thickness), emissivity);
+            let layer = Layer::new(name.clone(), facts.material, length(thickness));
             Some(self.accept(layer, &node.spot)?.with_limit(limit))
         });
         Some(LoweredLayer {

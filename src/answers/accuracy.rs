@@ -1,0 +1,117 @@
+//! How well a station is computed: the grid that keeps the promise, and the estimate of what is left.
+
+use super::pass::{Keep, LevelOf, Pass, PassSettings};
+use crate::model::{KelvinDifference, Model, Seconds};
+use crate::run::{Quantity, RunError};
+use crate::wall::Grid;
+
+/// Share of the promised tolerance that one step may err by.
+pub(super) const STEP_SHARE: f64 = 1.0;
+/// Share of the promised tolerance that the estimate must keep to.
+const WANTED_SHARE: f64 = 0.5;
+/// The second solution's steps may err by this many times more.
+const LOOSER: f64 = 4.0;
+/// Times that a grid is made finer before its estimate is accepted as it is.
+const MOST_ROUNDS: usize = 6;
+/// Halving a grid multiplies its error by four: the difference is three times what is left.
+const RICHARDSON: f64 = 3.0;
+/// Most phases of a profile in which the two solutions are compared, at either end.
+const COMPARED_PHASES: usize = 40;
+
+/// A grid that keeps the promise for a station, the pass on it, and the estimated error.
+#[derive(Clone, Debug)]
+pub struct Resolved {
+    /// The grid.
+    pub grid: Grid,
+    /// The pass on it.
+    pub pass: Pass,
+    /// Estimated error of peaks, crossings and phase ends, K.
+    pub estimated_error: KelvinDifference,
+}
+
+/// Makes the grid for a station: finer until the estimate from a second solution, on every second node and with looser steps, keeps the promise.
+///
+/// # Errors
+/// When the integrator gives up or the run was stopped.
+pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>) -> Result<Resolved, RunError> {
+    let station = &model.stations[station_index];
+    let keep = Keep {
+        times: compared_times(model),
+        ..Keep::default()
+    };
+    let fine = PassSettings {
+        step_tolerance: STEP_SHARE * model.tolerance,
+        ..*settings
+    };
+    let coarse = PassSettings {
+        step_tolerance: LOOSER * STEP_SHARE * model.tolerance,
+        progress: None,
+        ..*settings
+    };
+    let wanted = WANTED_SHARE * model.tolerance;
+    let mut fineness = 1.0;
+    let mut round = 0;
+    loop {
+        let grid = Grid::new(model, station, fineness);
+        let pass = Pass::of_profile(model, station_index, &grid, &fine, &keep)?;
+        let second = Pass::of_profile(model, station_index, &grid.halved(), &coarse, &keep)?;
+        let estimated_error = difference(&pass, &second) / RICHARDSON;
+        round += 1;
+        if std::env::var("SD").is_ok() { eprintln!("{fineness} {} nodes {estimated_error} steps {} {}", pass.map.len(), pass.steps, second.steps); }
+        if estimated_error <= wanted || round == MOST_ROUNDS {
+            return Ok(Resolved { grid, pass, estimated_error });
+        }
+        fineness *= (1.1 * (estimated_error / wanted).sqrt()).clamp(1.2, 2.5);
+    }
+}
+
+/// Clocks at which temperatures are promised: from a twentieth of each phase (or 1 s) on, to its end.
+fn compared_times(model: &Model) -> Vec<Seconds> {
+    let phases = model.profile.phases();
+    let starts = model.profile.starts();
+    let mut times = Vec::new();
+    for (index, phase) in phases.iter().enumerate() {
+        if index >= COMPARED_PHASES && index + COMPARED_PHASES < phases.len() {
+            continue;
+        }
+        let (start, duration) = (starts[index], phase.duration());
+        let last = index + 1 == phases.len();
+        let mut since = (duration / 20.0).min(1.0);
+        if last && duration == 0.0 {
+            since = 1.0;
+        }
+        let end = if last { crate::run::LONGEST } else { duration };
+        while since < end {
+            times.push(start + since);
+            since *= 2.0;
+        }
+        if !last {
+            times.push(start + duration);
+        }
+    }
+    times
+}
+
+/// The largest difference between two solutions, in peaks, in rows at the same clocks, and in crossings as temperature.
+fn difference(pass: &Pass, second: &Pass) -> KelvinDifference {
+    let mut largest: f64 = 0.0;
+    for (quantity, (a, b)) in pass.plan.quantities.iter().zip(pass.watcher.peaks().iter().zip(second.watcher.peaks())) {
+        if let (Quantity::Place(_) | Quantity::Truth(_), Some(a), Some(b)) = (quantity, a, b) {
+            largest = largest.max((a.value - b.value).abs());
+        }
+    }
+    for (a, b) in pass.rows.iter().zip(&second.rows) {
+        let faces = a.faces.iter().zip(&b.faces).map(|(a, b)| (a - b).abs());
+        let probes = a.probes.iter().zip(&b.probes).map(|(a, b)| (a.0 - b.0).abs().max((a.1 - b.1).abs()));
+        largest = faces.chain(probes).fold(largest, f64::max);
+    }
+    for (index, (_, of)) in pass.plan.levels.iter().enumerate() {
+        if !matches!(of, LevelOf::Wait(_) | LevelOf::Limit(_)) {
+            continue;
+        }
+        if let (Some((a, slope)), Some((b, _))) = (pass.watcher.crossings()[index].last_down, second.watcher.crossings()[index].last_down) {
+            largest = largest.max((a - b).abs() * slope.abs());
+        }
+    }
+    largest
+}

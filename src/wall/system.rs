@@ -1,0 +1,704 @@
+//! The wall as a system of equations, `L` members side by side.
+
+use super::curve::Share;
+use super::{Curve, Forcing, Grid, NodeMap, Over};
+use crate::heat::{gap_flux, grey_exchange, horizontal_cylinder, vertical_plate};
+use crate::model::{
+    Convection, Gap, Kelvin, Losses, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table, WattsPerSquareMetre,
+};
+use crate::solve::{Slot, System, Tridiagonal};
+use std::ops::RangeInclusive;
+
+/// Followers that every wall has, before those of its lagging probes.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Ledger {
+    /// Heat that came in over the hot face, J/m².
+    Inward,
+    /// Heat that left over the outer face, J/m² of hot face.
+    Outward,
+}
+
+/// Number of ledgers.
+const LEDGERS: usize = 2;
+
+/// Nodes whose temperature is not simply their unknown, with a curve for each member.
+#[derive(Clone, Debug)]
+struct CurvedNodes<const L: usize> {
+    nodes: RangeInclusive<usize>,
+    curves: [Curve; L],
+}
+
+/// A joint between two nodes that have temperatures of their own.
+#[derive(Clone, Debug)]
+struct JointFace<const L: usize> {
+    /// The node on its hot side.
+    node: usize,
+    crossing: [Crossing; L],
+}
+
+/// How heat crosses a joint, per hot-face area.
+#[derive(Clone, Debug)]
+enum Crossing {
+    /// By a conductance.
+    Contact(f64),
+    /// By conduction and radiation.
+    Gap { gap: Gap, area: f64, width: f64, exchange: f64 },
+}
+
+/// What one member's faces exchange heat with.
+#[derive(Clone, Debug)]
+struct Faces {
+    surroundings: Surroundings,
+    idle_emissivity: Table,
+    outside: Outside,
+    /// Outer area per hot-face area.
+    outer_area: f64,
+}
+
+/// A lagging probe, as a follower.
+#[derive(Clone, Debug)]
+struct LaggingProbe<const L: usize> {
+    first: usize,
+    weights: [Slot<L>; 4],
+    rate: Slot<L>,
+}
+
+/// A flux with its derivative by the face's temperature.
+type FluxAndSlope = (f64, f64);
+
+/// The walls of `L` members on one grid.
+#[derive(Clone, Debug)]
+pub struct Wall<const L: usize> {
+    /// Conductance between a node and the next, per hot-face area, at the anchor of the potentials; 0 across a joint.
+    conductance: Vec<Slot<L>>,
+    /// One over the heat capacity of a node at the anchor, per hot-face area; 0 for a held face.
+    inverse_capacity: Vec<Slot<L>>,
+    curved: Vec<CurvedNodes<L>>,
+    /// Which entry of `curved` a node belongs to.
+    curve_of: Vec<Option<usize>>,
+    joints: Vec<JointFace<L>>,
+    faces: [Faces; L],
+    held: bool,
+    maps: [NodeMap; L],
+    lagging: Vec<LaggingProbe<L>>,
+    /// Which follower a probe is, if it lags.
+    follower_of_probe: Vec<Option<usize>>,
+    decay: Vec<Slot<L>>,
+    follower_weights: Vec<Slot<L>>,
+    forcing: [Forcing; L],
+    // Room for one evaluation.
+    temperature: Vec<Slot<L>>,
+    inner: Vec<Slot<L>>,
+    outer: Vec<Slot<L>>,
+    by_unknown: Vec<Slot<L>>,
+    inner_by_unknown: Vec<Slot<L>>,
+    outer_by_unknown: Vec<Slot<L>>,
+    /// Flux into a node from the hot side; the last is what leaves the wall.
+    flux: Vec<Slot<L>>,
+    /// Its derivative by the node before and by the node itself.
+    flux_by_before: Vec<Slot<L>>,
+    flux_by_own: Vec<Slot<L>>,
+}
+
+impl<const L: usize> Wall<L> {
+    /// The walls of these members, which have the same layers and joints and may differ in every number, in a forcing of no length.
+    pub fn new(members: [(&Station, &Surroundings); L], grid: &Grid) -> Self {
+        let maps = members.map(|(station, _)| NodeMap::new(station, grid));
+        let geometry = std::array::from_fn::<_, L, _>(|l| Geometry::new(members[l].0, grid));
+        let len = maps[0].len();
+        let station = members[0].0;
+        let held = matches!(station.outer.outside, Outside::Fixed(_));
+        let slots = |value: &dyn Fn(usize) -> f64| -> Slot<L> { std::array::from_fn(value) };
+        let conductance = (0..len - 1).map(|node| slots(&|l| geometry[l].conductance[node])).collect();
+        let inverse_capacity = (0..len)
+            .map(|node| {
+                if held && node == len - 1 {
+                    [0.0; L]
+                } else {
+                    slots(&|l| 1.0 / geometry[l].capacity[node])
+                }
+            })
+            .collect();
+        let mut curved = Vec::new();
+        let mut curve_of = vec![None; len];
+        let mut add = |nodes: RangeInclusive<usize>, curves: [Curve; L]| {
+            if nodes.is_empty() || curves.iter().all(Curve::is_constant) {
+                return;
+            }
+            curve_of[nodes.clone()].fill(Some(curved.len()));
+            curved.push(CurvedNodes { nodes, curves });
+        };
+        let mut joints = Vec::new();
+        for (index, nodes) in maps[0].layers.iter().enumerate() {
+            let shared_before = index > 0 && station.resistance(index - 1).is_none();
+            let shared_after = index + 1 < maps[0].layers.len() && station.resistance(index).is_none();
+            let own = nodes.start() + usize::from(shared_before)..=nodes.end() - usize::from(shared_after);
+            let share = |l: usize, layer: usize, volume: f64| Share {
+                material: &members[l].0.layers[layer].material,
+                volume,
+            };
+            add(own, std::array::from_fn(|l| Curve::new(share(l, index, 1.0), share(l, index, 1.0))));
+            let end = *nodes.end();
+            if shared_after {
+                let curves = std::array::from_fn(|l| {
+                    let [inner, outer] = geometry[l].shared_volume[index];
+                    Curve::new(share(l, index, inner), share(l, index + 1, outer))
+                });
+                add(end..=end, curves);
+            } else if index + 1 < maps[0].layers.len() {
+                joints.push(JointFace {
+                    node: end,
+                    crossing: std::array::from_fn(|l| Crossing::new(members[l].0, index)),
+                });
+            }
+        }
+        let faces = std::array::from_fn(|l| {
+            let (station, surroundings) = members[l];
+            Faces {
+                surroundings: surroundings.clone(),
+                idle_emissivity: station.idle.emissivity.clone(),
+                outside: station.outer.outside.clone(),
+                outer_area: station.shape.area_ratio(station.outer_distance()),
+            }
+        });
+        let mut lagging = Vec::new();
+        let mut follower_of_probe = Vec::new();
+        for (index, probe) in station.probes.iter().enumerate() {
+            follower_of_probe.push((probe.lag > 0.0).then_some(LEDGERS + lagging.len()));
+            if probe.lag > 0.0 {
+                lagging.push(LaggingProbe {
+                    first: maps[0].probes[index].first,
+                    weights: std::array::from_fn(|k| slots(&|l| maps[l].probes[index].weights[k])),
+                    rate: slots(&|l| 1.0 / members[l].0.probes[index].lag),
+                });
+            }
+        }
+        let followers = LEDGERS + lagging.len();
+        let decay = (0..followers)
+            .map(|index| if index < LEDGERS { [0.0; L] } else { lagging[index - LEDGERS].rate })
+            .collect();
+        let zeros = vec![[0.0; L]; len];
+        let ones = vec![[1.0; L]; len];
+        let edges = vec![[0.0; L]; len + 1];
+        let nothing = Forcing {
+            length: 0.0,
+            film: super::Ramp::default(),
+            gas: super::Ramp::constant(super::curve::ANCHOR),
+            flux: super::Ramp::default(),
+            gas_emissivity: super::Ramp::default(),
+            idle_coefficient: 0.0,
+            idle_temperature: super::curve::ANCHOR,
+            idle_view: 0.0,
+            sun: 0.0,
+            over: Over::Losses,
+        };
+        Self {
+            conductance,
+            inverse_capacity,
+            curved,
+            curve_of,
+            joints,
+            faces,
+            held,
+            maps,
+            lagging,
+            follower_of_probe,
+            decay,
+            follower_weights: (0..followers).map(|index| if index < LEDGERS { [0.0; L] } else { [1.0; L] }).collect(),
+            forcing: [nothing; L],
+            temperature: zeros.clone(),
+            inner: zeros.clone(),
+            outer: zeros.clone(),
+            by_unknown: ones.clone(),
+            inner_by_unknown: ones.clone(),
+            outer_by_unknown: ones,
+            flux: edges.clone(),
+            flux_by_before: edges.clone(),
+            flux_by_own: edges,
+        }
+    }
+
+    /// Sets what acts on the faces from now on.
+    pub fn set_forcing(&mut self, forcing: [Forcing; L]) {
+        self.forcing = forcing;
+    }
+
+    /// The nodes of a member.
+    pub fn map(&self, member: usize) -> &NodeMap {
+        &self.maps[member]
+    }
+
+    /// Unknowns of walls at uniform temperatures; a held face has its own.
+    pub fn unknowns_at(&self, start: [Kelvin; L]) -> Vec<Slot<L>> {
+        let last = self.curve_of.len() - 1;
+        (0..=last)
+            .map(|node| {
+                std::array::from_fn(|l| {
+                    let temperature = match &self.faces[l].outside {
+                        Outside::Fixed(fixed) if node == last => *fixed,
+                        _ => start[l],
+                    };
+                    self.unknown(node, l, temperature)
+                })
+            })
+            .collect()
+    }
+
+    /// Followers at the start: empty ledgers, and probes that read the start temperature.
+    pub fn followers_at(&self, start: [Kelvin; L]) -> Vec<Slot<L>> {
+        (0..self.decay.len())
+            .map(|index| if index < LEDGERS { [0.0; L] } else { start })
+            .collect()
+    }
+
+    /// Temperature that a node's unknown says.
+    pub fn temperature(&self, node: usize, member: usize, unknown: f64) -> Kelvin {
+        match self.curve_of[node] {
+            Some(index) => self.curved[index].curves[member].temperature(unknown),
+            None => unknown,
+        }
+    }
+
+    /// Temperature of a node and its derivative by the unknown.
+    pub fn temperature_and_slope(&self, node: usize, member: usize, unknown: f64) -> (Kelvin, f64) {
+        match self.curve_of[node] {
+            Some(index) => {
+                let point = self.curved[index].curves[member].point(unknown);
+                (point.temperature, point.by_unknown)
+            }
+            None => (unknown, 1.0),
+        }
+    }
+
+    /// The unknown of a node at a temperature.
+    pub fn unknown(&self, node: usize, member: usize, temperature: Kelvin) -> f64 {
+        match self.curve_of[node] {
+            Some(index) => self.curved[index].curves[member].unknown(temperature),
+            None => temperature,
+        }
+    }
+
+    /// Which follower a probe is; `None`: it reads its nodes at once.
+    pub fn follower_of_probe(&self, probe: usize) -> Option<usize> {
+        self.follower_of_probe[probe]
+    }
+
+    /// Heat that a member's wall holds more in one state than in another, J per m² of hot face; a held face does not count.
+    pub fn stored(&self, member: usize, from: &[Slot<L>], to: &[Slot<L>]) -> f64 {
+        let parts = self.inverse_capacity.iter().zip(from.iter().zip(to));
+        parts
+            .filter(|(inverse, _)| inverse[member] > 0.0)
+            .map(|(inverse, (from, to))| (to[member] - from[member]) / inverse[member])
+            .sum()
+    }
+
+    /// Heat capacity of a member's wall at the anchor temperature, J per m² of hot face and kelvin.
+    pub fn capacity(&self, member: usize) -> f64 {
+        self.inverse_capacity
+            .iter()
+            .filter(|inverse| inverse[member] > 0.0)
+            .map(|inverse| 1.0 / inverse[member])
+            .sum()
+    }
+
+    /// Resistance of a member's wall from face to face at the anchor temperature, m²·K/W of hot face, joints left out.
+    pub fn resistance(&self, member: usize) -> f64 {
+        self.conductance
+            .iter()
+            .filter(|conductance| conductance[member] > 0.0)
+            .map(|conductance| 1.0 / conductance[member])
+            .sum()
+    }
+
+    /// Flux into the hot face, and out of the outer face per area of that face, W/m², in a state at a share of the stretch.
+    pub fn face_fluxes(&self, member: usize, share: f64, unknown: impl Fn(usize) -> f64) -> (WattsPerSquareMetre, WattsPerSquareMetre) {
+        let last = self.curve_of.len() - 1;
+        let inward = self.hot_flux(member, share, self.temperature(0, member, unknown(0))).0;
+        let outward = if self.held {
+            self.conducted(last - 1, member, unknown(last - 1), unknown(last))
+        } else {
+            self.outer_flux(member, self.temperature(last, member, unknown(last))).0
+        };
+        (inward, outward / self.faces[member].outer_area)
+    }
+
+    /// Heat that crosses from a node to the next, per hot-face area.
+    fn conducted(&self, node: usize, member: usize, unknown: f64, next: f64) -> f64 {
+        let point = |node: usize, unknown: f64| match self.curve_of[node] {
+            Some(index) => {
+                let point = self.curved[index].curves[member].point(unknown);
+                (point.inner, point.outer)
+            }
+            None => (unknown, unknown),
+        };
+        self.conductance[node][member] * (point(node, unknown).1 - point(node + 1, next).0)
+    }
+
+    /// Whether neither face's exchange depends on its temperature, at the end of the stretch: nothing can balance a flux.
+    pub fn answers_nothing(&self, unknowns: &[Slot<L>]) -> bool {
+        let last = self.curve_of.len() - 1;
+        !self.held
+            && (0..L).all(|l| {
+                self.hot_flux(l, 1.0, self.temperature(0, l, unknowns[0][l])).1 == 0.0
+                    && self.outer_flux(l, self.temperature(last, l, unknowns[last][l])).1 == 0.0
+            })
+    }
+
+    /// Whether the outer face is held at a temperature.
+    pub fn is_held(&self) -> bool {
+        self.held
+    }
+
+    /// Heat into the hot face at its temperature, at a share of the stretch.
+    #[inline]
+    fn hot_flux(&self, member: usize, share: f64, face: Kelvin) -> FluxAndSlope {
+        let forcing = &self.forcing[member];
+        let film = forcing.film.at(share);
+        let gas = forcing.gas.at(share);
+        let mut flux = film * (gas - face) + forcing.flux.at(share) + forcing.sun + forcing.idle_coefficient * (forcing.idle_temperature - face);
+        let mut slope = -film - forcing.idle_coefficient;
+        let cube = face * face * face;
+        let gas_emissivity = forcing.gas_emissivity.at(share) * STEFAN_BOLTZMANN;
+        if gas_emissivity > 0.0 {
+            flux += gas_emissivity * (gas * gas * gas * gas - cube * face);
+            slope -= 4.0 * gas_emissivity * cube;
+        }
+        if forcing.idle_view > 0.0 {
+            let faces = &self.faces[member];
+            let (emissivity, change) = faces.idle_emissivity.value_and_slope(face);
+            let (lost, lost_slope) = radiated(face, faces.surroundings.surfaces);
+            flux -= forcing.idle_view * emissivity * lost;
+            slope -= forcing.idle_view * (emissivity * lost_slope + change * lost);
+        }
+        (flux, slope)
+    }
+
+    /// Heat out of the outer face at its temperature, per hot-face area.
+    #[inline]
+    fn outer_flux(&self, member: usize, face: Kelvin) -> FluxAndSlope {
+        let faces = &self.faces[member];
+        let Outside::Open(losses) = &faces.outside else { return (0.0, 0.0) };
+        let (flux, slope) = match self.forcing[member].over {
+            Over::Coolant { coefficient, temperature } => (coefficient * (face - temperature), coefficient),
+            Over::Losses => outside_losses(losses, &faces.surroundings, face),
+        };
+        (flux * faces.outer_area, slope * faces.outer_area)
+    }
+
+    /// Temperatures and potentials of all nodes; with slopes for a Jacobian.
+    #[inline]
+    fn evaluate<const SLOPES: bool>(&mut self, unknowns: &[Slot<L>]) {
+        self.temperature.copy_from_slice(unknowns);
+        if self.curved.is_empty() {
+            return;
+        }
+        self.inner.copy_from_slice(unknowns);
+        self.outer.copy_from_slice(unknowns);
+        for group in &self.curved {
+            for node in group.nodes.clone() {
+                for l in 0..L {
+                    let point = group.curves[l].point(unknowns[node][l]);
+                    self.temperature[node][l] = point.temperature;
+                    self.inner[node][l] = point.inner;
+                    self.outer[node][l] = point.outer;
+                    if SLOPES {
+                        self.by_unknown[node][l] = point.by_unknown;
+                        self.inner_by_unknown[node][l] = point.inner_by_unknown;
+                        self.outer_by_unknown[node][l] = point.outer_by_unknown;
+                    }
+                }
+            }
+        }
+    }
+
+    /// Fluxes between the nodes and over the faces; with their derivatives for a Jacobian.
+    #[inline]
+    fn fluxes<const SLOPES: bool>(&mut self, share: f64, unknowns: &[Slot<L>]) {
+        self.evaluate::<SLOPES>(unknowns);
+        let last = unknowns.len() - 1;
+        {
+            let (inner, outer) = if self.curved.is_empty() {
+                (unknowns, unknowns)
+            } else {
+                (&self.inner[..], &self.outer[..])
+            };
+            let flux = &mut self.flux[1..=last];
+            for (((flux, conductance), hot), cold) in flux.iter_mut().zip(&self.conductance).zip(&outer[..last]).zip(&inner[1..=last]) {
+                for l in 0..L {
+                    flux[l] = conductance[l] * (hot[l] - cold[l]);
+                }
+            }
+        }
+        if SLOPES {
+            for node in 0..last {
+                for l in 0..L {
+                    self.flux_by_before[node + 1][l] = self.conductance[node][l] * self.outer_by_unknown[node][l];
+                    self.flux_by_own[node + 1][l] = -self.conductance[node][l] * self.inner_by_unknown[node + 1][l];
+                }
+            }
+        }
+        for joint in &self.joints {
+            let node = joint.node;
+            for l in 0..L {
+                let (flux, by_hot, by_cold) = joint.crossing[l].flux(self.temperature[node][l], self.temperature[node + 1][l]);
+                self.flux[node + 1][l] = flux;
+                if SLOPES {
+                    self.flux_by_before[node + 1][l] = by_hot * self.by_unknown[node][l];
+                    self.flux_by_own[node + 1][l] = by_cold * self.by_unknown[node + 1][l];
+                }
+            }
+        }
+        for l in 0..L {
+            let (inward, inward_slope) = self.hot_flux(l, share, self.temperature[0][l]);
+            // What leaves over a held face is what the last pair of nodes conducts into it.
+            let (outward, outward_slope) = if self.held { (self.flux[last][l], 0.0) } else { self.outer_flux(l, self.temperature[last][l]) };
+            self.flux[0][l] = inward;
+            self.flux[last + 1][l] = outward;
+            // Between two Jacobians the derivatives must stay those that the matrix was made of, or the ledgers no longer close.
+            if SLOPES {
+                self.flux_by_own[0][l] = inward_slope * self.by_unknown[0][l];
+                self.flux_by_before[last + 1][l] = outward_slope * self.by_unknown[last][l];
+            }
+        }
+    }
+
+    fn rates(&self, followers: &[Slot<L>], rate: &mut [Slot<L>], follower_rate: &mut [Slot<L>]) {
+        let len = rate.len();
+        for (node, (rate, inverse)) in rate.iter_mut().zip(&self.inverse_capacity).enumerate() {
+            for l in 0..L {
+                rate[l] = (self.flux[node][l] - self.flux[node + 1][l]) * inverse[l];
+            }
+        }
+        follower_rate[Ledger::Inward as usize] = self.flux[0];
+        follower_rate[Ledger::Outward as usize] = self.flux[len];
+        for (index, probe) in self.lagging.iter().enumerate() {
+            for l in 0..L {
+                let read: f64 = (0..4)
+                    .map(|k| probe.weights[k][l] * self.temperature[(probe.first + k).min(len - 1)][l])
+                    .sum();
+                follower_rate[LEDGERS + index][l] = (read - followers[LEDGERS + index][l]) * probe.rate[l];
+            }
+        }
+    }
+}
+
+impl<const L: usize> System<L> for Wall<L> {
+    fn len(&self) -> usize {
+        self.curve_of.len()
+    }
+
+    fn followers(&self) -> usize {
+        self.decay.len()
+    }
+
+    fn phase_length(&self) -> Slot<L> {
+        std::array::from_fn(|l| self.forcing[l].length)
+    }
+
+    fn rate(&mut self, share: f64, unknowns: &[Slot<L>], followers: &[Slot<L>], rate: &mut [Slot<L>], follower_rate: &mut [Slot<L>]) {
+        self.fluxes::<false>(share, unknowns);
+        self.rates(followers, rate, follower_rate);
+    }
+
+    fn jacobian(
+        &mut self,
+        share: f64,
+        unknowns: &[Slot<L>],
+        followers: &[Slot<L>],
+        rate: &mut [Slot<L>],
+        follower_rate: &mut [Slot<L>],
+        jacobian: &mut Tridiagonal<L>,
+    ) {
+        self.fluxes::<true>(share, unknowns);
+        self.rates(followers, rate, follower_rate);
+        for node in 0..unknowns.len() {
+            for l in 0..L {
+                let inverse = self.inverse_capacity[node][l];
+                jacobian.lower[node][l] = self.flux_by_before[node][l] * inverse;
+                jacobian.diagonal[node][l] = (self.flux_by_own[node][l] - self.flux_by_before[node + 1][l]) * inverse;
+                jacobian.upper[node][l] = -self.flux_by_own[node + 1][l] * inverse;
+            }
+        }
+    }
+
+    fn rate_of_time(&mut self, share: f64, unknowns: &[Slot<L>], rate: &mut [Slot<L>], follower_rate: &mut [Slot<L>]) -> bool {
+        if self.forcing.iter().all(Forcing::is_constant) {
+            return false;
+        }
+        rate.fill([0.0; L]);
+        follower_rate.fill([0.0; L]);
+        for l in 0..L {
+            let forcing = &self.forcing[l];
+            let face = self.temperature(0, l, unknowns[0][l]);
+            let gas = forcing.gas.at(share);
+            let emission = gas.powi(4) - face.powi(4);
+            let change = forcing.film.rise() * (gas - face)
+                + forcing.film.at(share) * forcing.gas.rise()
+                + forcing.flux.rise()
+                + STEFAN_BOLTZMANN
+                    * (forcing.gas_emissivity.rise() * emission + forcing.gas_emissivity.at(share) * 4.0 * gas.powi(3) * forcing.gas.rise());
+            let change = change / forcing.length;
+            rate[0][l] = change * self.inverse_capacity[0][l];
+            follower_rate[Ledger::Inward as usize][l] = change;
+        }
+        true
+    }
+
+    fn drive(&self, direction: &[Slot<L>], out: &mut [Slot<L>]) {
+        let last = direction.len() - 1;
+        for l in 0..L {
+            out[Ledger::Inward as usize][l] = self.flux_by_own[0][l] * direction[0][l];
+            out[Ledger::Outward as usize][l] = if self.held {
+                self.flux_by_before[last][l] * direction[last - 1][l] + self.flux_by_own[last][l] * direction[last][l]
+            } else {
+                self.flux_by_before[last + 1][l] * direction[last][l]
+            };
+        }
+        for (index, probe) in self.lagging.iter().enumerate() {
+            for l in 0..L {
+                let read: f64 = (0..4)
+                    .map(|k| {
+                        let node = (probe.first + k).min(last);
+                        probe.weights[k][l] * self.by_unknown[node][l] * direction[node][l]
+                    })
+                    .sum();
+                out[LEDGERS + index][l] = read * probe.rate[l];
+            }
+        }
+    }
+
+    fn decay(&self) -> &[Slot<L>] {
+        &self.decay
+    }
+
+    fn weights(&self) -> &[Slot<L>] {
+        &self.by_unknown
+    }
+
+    fn follower_weights(&self) -> &[Slot<L>] {
+        &self.follower_weights
+    }
+}
+
+impl Crossing {
+    fn new(station: &Station, joint: usize) -> Self {
+        let distance = station.distances()[joint] + station.layers[joint].thickness;
+        let area = station.shape.area_ratio(distance);
+        match station.resistance(joint) {
+            Some(Resistance::Gap(gap)) => {
+                let (width, ratio) = match station.shape {
+                    Shape::Plane => (gap.width, 1.0),
+                    Shape::Cylinder { inner_radius } => {
+                        let inner = inner_radius + distance;
+                        (inner * (1.0 + gap.width / inner).ln(), inner / (inner + gap.width))
+                    }
+                };
+                Self::Gap {
+                    gap: gap.clone(),
+                    area,
+                    width,
+                    exchange: grey_exchange(gap.emissivity[0], gap.emissivity[1], ratio),
+                }
+            }
+            Some(Resistance::Contact(conductance)) => Self::Contact(conductance * area),
+            // A wall is only asked for the joints that resist.
+            None => Self::Contact(f64::INFINITY),
+        }
+    }
+
+    /// Heat across, per hot-face area, and its derivatives by both temperatures.
+    #[inline]
+    fn flux(&self, hot: Kelvin, cold: Kelvin) -> (f64, f64, f64) {
+        match self {
+            Self::Contact(conductance) => (conductance * (hot - cold), *conductance, -conductance),
+            Self::Gap { gap, area, width, exchange } => {
+                let crossing = gap_flux(gap.gas, *width, *exchange, hot, cold);
+                (crossing.flux * area, crossing.by_first * area, crossing.by_second * area)
+            }
+        }
+    }
+}
+
+/// σ (T⁴ − T₀⁴) and its derivative.
+#[inline]
+fn radiated(face: Kelvin, surfaces: Kelvin) -> FluxAndSlope {
+    let cube = face * face * face;
+    (
+        STEFAN_BOLTZMANN * (cube * face - surfaces * surfaces * surfaces * surfaces),
+        4.0 * STEFAN_BOLTZMANN * cube,
+    )
+}
+
+/// Heat from an outer face by convection and radiation, less the sun, per area of that face.
+fn outside_losses(losses: &Losses, surroundings: &Surroundings, face: Kelvin) -> FluxAndSlope {
+    let (mut flux, mut slope) = match losses.convection {
+        Convection::None => (0.0, 0.0),
+        Convection::Coefficient(coefficient) => (coefficient * (face - surroundings.air), coefficient),
+        Convection::NaturalVertical(height) => {
+            let lost = vertical_plate(face, surroundings.air, surroundings.pressure, height);
+            (lost.value, lost.slope)
+        }
+        Convection::NaturalHorizontalCylinder(diameter) => {
+            let lost = horizontal_cylinder(face, surroundings.air, surroundings.pressure, diameter);
+            (lost.value, lost.slope)
+        }
+    };
+    if let Some(table) = &losses.emissivity {
+        let (emissivity, change) = table.value_and_slope(face);
+        let (lost, lost_slope) = radiated(face, surroundings.surfaces);
+        flux += emissivity * lost;
+        slope += emissivity * lost_slope + change * lost;
+    }
+    (flux - losses.solar_absorptivity * surroundings.sun, slope)
+}
+
+/// Conductances and capacities of one member's nodes, per hot-face area.
+struct Geometry {
+    /// Between a node and the next; 0 across a joint.
+    conductance: Vec<f64>,
+    /// At the anchor.
+    capacity: Vec<f64>,
+    /// Volumes on the two sides of the node that layer i shares with the next.
+    shared_volume: Vec<[f64; 2]>,
+}
+
+impl Geometry {
+    fn new(station: &Station, grid: &Grid) -> Self {
+        let map = NodeMap::new(station, grid);
+        let mut conductance = vec![0.0; map.len() - 1];
+        let mut capacity = vec![0.0; map.len()];
+        let mut shared_volume = vec![[0.0; 2]; station.layers.len()];
+        let distances = station.distances();
+        for (index, (layer, nodes)) in station.layers.iter().zip(&map.layers).enumerate() {
+            let material = &layer.material;
+            let heat = material.density * material.heat_capacity.value(super::curve::ANCHOR);
+            let conductivity = material.conductivity.value(super::curve::ANCHOR);
+            let start = *nodes.start();
+            let distance: Vec<f64> = grid.layers()[index]
+                .iter()
+                .map(|share| distances[index] + share * layer.thickness)
+                .collect();
+            for (cell, pair) in distance.windows(2).enumerate() {
+                let node = start + cell;
+                let middle = 0.5 * (pair[0] + pair[1]);
+                let volumes = [station.shape.volume(pair[0], middle), station.shape.volume(middle, pair[1])];
+                capacity[node] += heat * volumes[0];
+                capacity[node + 1] += heat * volumes[1];
+                conductance[node] = match station.shape {
+                    Shape::Plane => conductivity / (pair[1] - pair[0]),
+                    // Exact for steady flow: k/(r₀ ln(r₂/r₁)) per area of the hot face at r₀.
+                    Shape::Cylinder { inner_radius } => conductivity / (inner_radius * ((pair[1] - pair[0]) / (inner_radius + pair[0])).ln_1p()),
+                };
+                if cell == 0 && index > 0 {
+                    shared_volume[index - 1][1] = volumes[0];
+                }
+                shared_volume[index][0] = volumes[1];
+            }
+        }
+        Self {
+            conductance,
+            capacity,
+            shared_volume,
+        }
+    }
+}
