@@ -3,6 +3,7 @@
 use super::{Case, InputValue, library, load};
 use crate::diagnostics::{Diagnostics, Severity};
 use std::path::{Path, PathBuf};
+use std::sync::atomic::{AtomicUsize, Ordering};
 
 type Outcome = Result<(), Box<dyn std::error::Error>>;
 
@@ -38,8 +39,32 @@ in = "liner"
 from_outside = "1 mm"
 "#;
 
+/// A folder of a test's own, gone with it.
+struct Folder(PathBuf);
+
+impl Folder {
+    fn new() -> Result<Self, std::io::Error> {
+        static COUNT: AtomicUsize = AtomicUsize::new(0);
+        let name = format!("soakdown-case-{}-{}", std::process::id(), COUNT.fetch_add(1, Ordering::Relaxed));
+        let path = std::env::temp_dir().join(name);
+        std::fs::create_dir_all(&path)?;
+        Ok(Self(path))
+    }
+
+    fn path(&self) -> &Path {
+        &self.0
+    }
+}
+
+impl Drop for Folder {
+    fn drop(&mut self) {
+        // What can't be removed is left to the system's own tidying.
+        let _ = std::fs::remove_dir_all(&self.0);
+    }
+}
+
 fn load_text(text: &str, settings: &[&str]) -> Result<Result<Case, Diagnostics>, std::io::Error> {
-    let folder = tempfile::tempdir()?;
+    let folder = Folder::new()?;
     let path = folder.path().join("case.toml");
     std::fs::write(&path, text)?;
     let settings: Vec<_> = settings.iter().map(|setting| (*setting).to_owned()).collect();
@@ -397,7 +422,7 @@ fn losses_coolant_and_sun_reach_the_model() -> Outcome {
 
 #[test]
 fn a_heating_log_is_read_from_beside_the_case() -> Outcome {
-    let folder = tempfile::tempdir()?;
+    let folder = Folder::new()?;
     std::fs::write(folder.path().join("heat.csv"), "\u{feff}time_s, flux_W_m2\r\n0, 1e6\r\n\r\n0.5, 2e6\r\n")?;
     let path = folder.path().join("case.toml");
     let heating = "model = \"log\"\nfile = \"heat.csv\"\nnet = true";
@@ -553,7 +578,7 @@ const NONSENSE: [&str; 24] = [
 
 #[test]
 fn nonsense_in_any_place_is_told() -> Outcome {
-    let folder = tempfile::tempdir()?;
+    let folder = Folder::new()?;
     let path = folder.path().join("case.toml");
     for (index, _) in CHAMBER.match_indices(" = ") {
         let start = index + 3;
@@ -569,7 +594,7 @@ fn nonsense_in_any_place_is_told() -> Outcome {
 
 #[test]
 fn nonsense_set_on_any_path_is_told() -> Outcome {
-    let folder = tempfile::tempdir()?;
+    let folder = Folder::new()?;
     let path = folder.path().join("case.toml");
     std::fs::write(&path, CHAMBER)?;
     for known in accepted(CHAMBER, &[])?.inputs {
@@ -583,7 +608,7 @@ fn nonsense_set_on_any_path_is_told() -> Outcome {
 
 #[test]
 fn torn_files_are_told() -> Outcome {
-    let folder = tempfile::tempdir()?;
+    let folder = Folder::new()?;
     let path = folder.path().join("case.toml");
     for (index, letter) in CHAMBER.char_indices().step_by(3) {
         for text in [
