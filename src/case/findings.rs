@@ -1,5 +1,6 @@
 //! Collects what is found on the way from text to model.
 
+use super::suggest;
 use super::tree::Spot;
 use crate::diagnostics::{Diagnostic, Diagnostics, Notice, Severity, SourceText};
 
@@ -69,6 +70,18 @@ impl Findings {
             Some(source) if source.name == SETTING => "set",
             _ => "case",
         }
+    }
+
+    /// A key that is missing because it is misspelt is reported once, where it is misspelt.
+    pub fn forgive_misspelt(&mut self) {
+        let list = &mut self.diagnostics.list;
+        let misspelt = |found: &Diagnostic| matches!(found.code, "unknown-key" | "unknown-section");
+        let meant: Vec<String> = list.iter().filter(|found| misspelt(found)).flat_map(|found| found.help.clone()).collect();
+        list.retain(|found| {
+            let missing = matches!(found.code, "missing-key" | "missing-section");
+            let key = found.message.split('"').nth(1).unwrap_or_default();
+            !(missing && meant.contains(&suggest::did_you_mean(key)))
+        });
     }
 
     /// In the order of the texts and of the places in them; those without a place first.

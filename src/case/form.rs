@@ -50,8 +50,8 @@ impl Form<'_> {
                     None => self.wrong_type(&node.spot, &value, expect),
                 }
             }
-            (Value::Text(text), Expect::Quantity(kind, bounds)) => self.quantity(node, text, *kind, *bounds, path),
-            (Value::Text(text), Expect::Property(kind, bounds)) if *kind != Kind::Number => self.quantity(node, text, *kind, *bounds, path),
+            (Value::Text(text), Expect::Quantity(kind, bounds)) => self.quantity(node, &text, *kind, *bounds, path),
+            (Value::Text(text), Expect::Property(kind, bounds)) if *kind != Kind::Number => self.quantity(node, &text, *kind, *bounds, path),
             (value @ (Value::Integer(_) | Value::Float(_)), Expect::Quantity(kind, _) | Expect::Property(kind, _)) if *kind != Kind::Number => {
                 let written = self.characters(&node.spot).to_owned();
                 let example = kind.examples().first().copied().unwrap_or_default();
@@ -89,13 +89,11 @@ impl Form<'_> {
                     self.input(node, path, InputValue::Word(word.clone()), Kind::Number);
                     node.value = Value::Text(word);
                 } else {
-                    node.value = Value::Text(word.clone());
                     let spot = node.words();
-                    node.value = Value::Bad;
                     let mut found = Diagnostic::error("unknown-word", format!("\"{word}\" is not one of the words that may stand here"));
                     found
                         .help
-                        .extend(suggest::nearest(&word, words.iter().copied()).map(|near| format!("did you mean \"{near}\"?")));
+                        .extend(suggest::nearest(&word, words.iter().copied()).map(suggest::did_you_mean));
                     self.findings.at(&spot, found.help(format!("one of: {}", words.join(", "))));
                 }
             }
@@ -104,12 +102,11 @@ impl Form<'_> {
                 node.value = Value::Text(text);
             }
             (Value::Text(name), Expect::Name) => {
-                let fault = names::fault(&name);
-                node.value = Value::Text(name);
-                if let Some((code, message)) = fault {
-                    let spot = node.words();
-                    node.value = Value::Bad;
-                    self.findings.at(&spot, Diagnostic::error(code, message).label("choose another name"));
+                if let Some((code, message)) = names::fault(&name) {
+                    self.findings
+                        .at(&node.words(), Diagnostic::error(code, message).label("choose another name"));
+                } else {
+                    node.value = Value::Text(name);
                 }
             }
             (Value::List(mut items), Expect::List(item)) => {
@@ -171,12 +168,10 @@ impl Form<'_> {
         node.value = Value::List(items);
     }
 
-    fn quantity(&mut self, node: &mut Node, text: String, kind: Kind, bounds: Bounds, path: &str) {
-        match units::read(&text, kind) {
+    fn quantity(&mut self, node: &mut Node, text: &str, kind: Kind, bounds: Bounds, path: &str) {
+        match units::read(text, kind) {
             Ok(number) => {
-                node.value = Value::Text(text);
                 let spot = node.words();
-                node.value = Value::Bad;
                 if self.in_bounds(&spot, number, bounds, kind, path) {
                     node.value = Value::Number(number);
                     self.input(node, path, InputValue::Number(number), kind);
@@ -280,16 +275,17 @@ impl Form<'_> {
         let below = number < bounds.least || (bounds.above && number <= bounds.least);
         if !number.is_finite() || below || number > bounds.most {
             let least = if bounds.above { "above" } else { "at least" };
+            let (from, to) = (plain(bounds.least), plain(bounds.most));
             let due = match (bounds.least.is_finite(), bounds.most.is_finite()) {
-                _ if kind == Kind::Temperature => "a temperature above absolute zero is due".to_owned(),
-                (true, true) if bounds.above => format!("a value above {}{unit}, at most {}{unit}, is due", bounds.least, bounds.most),
-                (true, true) => format!("a value from {}{unit} to {}{unit} is due", bounds.least, bounds.most),
-                (true, false) => format!("a value {least} {}{unit} is due", bounds.least),
-                (false, true) => format!("a value of at most {}{unit} is due", bounds.most),
+                _ if kind == Kind::Temperature && below => "a temperature above absolute zero is due".to_owned(),
+                (true, true) if bounds.above => format!("a value above {from}{unit}, at most {to}{unit}, is due"),
+                (true, true) => format!("a value from {from}{unit} to {to}{unit} is due"),
+                (true, false) => format!("a value {least} {from}{unit} is due"),
+                (false, true) => format!("a value of at most {to}{unit} is due"),
                 (false, false) => "a finite number is due".to_owned(),
             };
             let message = if number.is_finite() {
-                format!("{number}{unit} makes no sense here")
+                format!("{} makes no sense here", self.characters(spot))
             } else {
                 "this is no finite number".to_owned()
             };
@@ -438,5 +434,14 @@ pub(super) fn due(expect: &Expect) -> String {
         Expect::Sections(section) => format!("a list of tables is due: {}", section.title),
         Expect::OneOf(choices) => choices.iter().map(due).collect::<Vec<_>>().join("; or "),
         Expect::Free => "a value is due".to_owned(),
+    }
+}
+
+/// A number for a message: short, whatever its size.
+fn plain(number: f64) -> String {
+    if number != 0.0 && !(1e-4..1e7).contains(&number.abs()) {
+        format!("{number:e}")
+    } else {
+        number.to_string()
     }
 }

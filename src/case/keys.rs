@@ -24,6 +24,16 @@ impl Bounds {
         }
     }
 
+    /// Beyond these it is no number of this world.
+    const fn within(self, least: f64, most: f64) -> Self {
+        Self {
+            least,
+            above: false,
+            most,
+            ..self
+        }
+    }
+
     const fn odd(self, below: f64, above: f64) -> Self {
         Self { odd: (below, above), ..self }
     }
@@ -34,8 +44,16 @@ pub(super) const POSITIVE: Bounds = Bounds::new(0.0, true, f64::INFINITY);
 pub(super) const NOT_NEGATIVE: Bounds = Bounds::new(0.0, false, f64::INFINITY);
 pub(super) const SHARE: Bounds = Bounds::new(0.0, false, 1.0);
 /// Temperatures lie above absolute zero.
-const TEMPERATURE: Bounds = POSITIVE.odd(1.0, 6000.0);
-const WEATHER: Bounds = POSITIVE.odd(200.0, 340.0);
+const TEMPERATURE: Bounds = Bounds::new(0.0, true, 1e5).odd(1.0, 6000.0);
+const WEATHER: Bounds = TEMPERATURE.odd(200.0, 340.0);
+/// Durations, s: three years are enough.
+const DURATION: Bounds = Bounds::new(0.0, false, 1e8);
+/// Phases, s: below a microsecond nothing burns and nothing holds.
+const PHASE_LENGTH: Bounds = DURATION.within(1e-6, 1e8);
+/// Lengths, m: from an atom's size to a kilometre.
+const LENGTH: Bounds = POSITIVE.within(1e-10, 1e3);
+const COEFFICIENT: Bounds = Bounds::new(0.0, false, 1e9).odd(0.0, 1e6);
+const CONDUCTANCE: Bounds = POSITIVE.within(1e-6, 1e10).odd(1.0, 1e7);
 
 /// What is expected at a key.
 #[derive(Debug)]
@@ -122,15 +140,15 @@ const fn temperature() -> Expect {
 }
 
 const fn coefficient() -> Expect {
-    Expect::Quantity(Kind::HeatTransferCoefficient, NOT_NEGATIVE.odd(0.0, 1e6))
+    Expect::Quantity(Kind::HeatTransferCoefficient, COEFFICIENT)
 }
 
 const fn time() -> Expect {
-    Expect::Quantity(Kind::Time, NOT_NEGATIVE)
+    Expect::Quantity(Kind::Time, DURATION)
 }
 
 const fn length() -> Expect {
-    Expect::Quantity(Kind::Length, POSITIVE)
+    Expect::Quantity(Kind::Length, LENGTH)
 }
 
 pub(super) const SHAPES: &[&str] = &["plane", "cylinder", "bar"];
@@ -145,7 +163,7 @@ pub(super) const PHASES: &[&str] = &["burn", "hold", "shutdown"];
 pub(super) const PLACES: &[&str] = &["hot-face", "outer-face", "everywhere"];
 
 pub(super) static CASE: Section = Section {
-    title: "a case file",
+    title: "the case file",
     keys: &[
         required("soakdown", Expect::Whole(i128::MIN, i128::MAX)),
         key("title", Expect::Text),
@@ -183,17 +201,17 @@ static SURROUNDINGS: Section = Section {
     title: "[surroundings]",
     keys: &[
         required("air", Expect::Quantity(Kind::Temperature, WEATHER)),
-        key("surfaces", Expect::Quantity(Kind::Temperature, POSITIVE.odd(3.0, 400.0))),
-        key("pressure", Expect::Quantity(Kind::Pressure, NOT_NEGATIVE.odd(0.0, 2e6))),
+        key("surfaces", Expect::Quantity(Kind::Temperature, TEMPERATURE.odd(3.0, 400.0))),
+        key("pressure", Expect::Quantity(Kind::Pressure, NOT_NEGATIVE.within(0.0, 1e9).odd(0.0, 2e6))),
         key("wind", Expect::Quantity(Kind::Velocity, NOT_NEGATIVE.odd(0.0, 60.0))),
-        key("sun", Expect::Quantity(Kind::HeatFlux, NOT_NEGATIVE.odd(0.0, 1500.0))),
+        key("sun", Expect::Quantity(Kind::HeatFlux, NOT_NEGATIVE.within(0.0, 1e5).odd(0.0, 1500.0))),
     ],
 };
 
 static START: Section = Section {
     title: "[start]",
     keys: &[
-        key("temperature", Expect::Quantity(Kind::Temperature, POSITIVE.odd(20.0, 1500.0))),
+        key("temperature", Expect::Quantity(Kind::Temperature, TEMPERATURE.odd(20.0, 1500.0))),
         key("from", Expect::Text),
         key("at", time()),
     ],
@@ -238,12 +256,12 @@ static PROFILE: Section = Section {
 static PHASE: Section = Section {
     title: "a phase",
     keys: &[
-        key("burn", Expect::Quantity(Kind::Time, POSITIVE.odd(0.0, 7200.0))),
-        key("hold", Expect::Quantity(Kind::Time, POSITIVE)),
+        key("burn", Expect::Quantity(Kind::Time, PHASE_LENGTH.odd(0.0, 7200.0))),
+        key("hold", Expect::Quantity(Kind::Time, PHASE_LENGTH)),
         key("shutdown", time()),
         key("repeat", Expect::Whole(1, i128::MAX)),
         key("phases", Expect::Sections(&PHASE)),
-        key("level", Expect::Number(NOT_NEGATIVE.odd(0.01, 1.5))),
+        key("level", Expect::Number(NOT_NEGATIVE.within(0.0, 100.0).odd(0.01, 1.5))),
         key("ramp", time()),
         key("tail", time()),
         key("purge", Expect::Switch),
@@ -268,7 +286,7 @@ pub(super) static STATION: Section = Section {
     keys: &[
         key("name", Expect::Name),
         key("shape", Expect::Word(SHAPES)),
-        key("inner_diameter", Expect::Quantity(Kind::Length, POSITIVE.odd(5e-4, 10.0))),
+        key("inner_diameter", Expect::Quantity(Kind::Length, LENGTH.odd(5e-4, 10.0))),
         key("area_ratio", Expect::Number(Bounds::new(1.0, false, f64::INFINITY).odd(1.0, 1000.0))),
         key("side", Expect::Word(&["chamber", "nozzle"])),
         key("position", Expect::Quantity(Kind::Length, ANY)),
@@ -287,7 +305,7 @@ static LAYER: Section = Section {
     keys: &[
         required("name", Expect::Name),
         required("material", Expect::Text),
-        required("thickness", Expect::Quantity(Kind::Length, POSITIVE.odd(1e-6, 1.0))),
+        required("thickness", Expect::Quantity(Kind::Length, LENGTH.odd(1e-6, 1.0))),
         key("surface", Expect::Word(&["bare", "oxidised"])),
         key("limit", LIMIT),
         key("joint", Expect::Section(&JOINT)),
@@ -300,18 +318,14 @@ const LIMIT: Expect = Expect::OneOf(&[temperature(), Expect::Section(&LIMIT_TABL
 
 static LIMIT_TABLE: Section = Section {
     title: "a limit",
-    keys: &[
-        required("value", temperature()),
-        key("kind", Expect::Word(LIMIT_KINDS)),
-        key("for", time()),
-    ],
+    keys: &[key("value", temperature()), key("kind", Expect::Word(LIMIT_KINDS)), key("for", time())],
 };
 
 static JOINT: Section = Section {
     title: "a joint",
     keys: &[
-        key("conductance", Expect::Quantity(Kind::HeatTransferCoefficient, POSITIVE.odd(1.0, 1e7))),
-        key("gap", Expect::Quantity(Kind::Length, POSITIVE.odd(1e-6, 0.2))),
+        key("conductance", Expect::Quantity(Kind::HeatTransferCoefficient, CONDUCTANCE)),
+        key("gap", Expect::Quantity(Kind::Length, LENGTH.odd(1e-6, 0.2))),
         key("gas", Expect::Word(GASES)),
         key("emissivity", Expect::List(&Expect::Number(SHARE))),
         key("pressure", Expect::Quantity(Kind::Pressure, POSITIVE)),
@@ -331,10 +345,10 @@ static HEATING: Section = Section {
         required("model", Expect::Word(HEATINGS)),
         key("coefficient", coefficient()),
         key("gas_temperature", temperature()),
-        key("factor", Expect::Number(NOT_NEGATIVE.odd(0.1, 5.0))),
+        key("factor", Expect::Number(NOT_NEGATIVE.within(0.0, 1e4).odd(0.1, 5.0))),
         key("gas_emissivity", Expect::OneOf(&[Expect::Number(SHARE), Expect::Word(&["estimate"])])),
         key("open", Expect::Switch),
-        key("flux", Expect::Quantity(Kind::HeatFlux, ANY.odd(0.0, 3e8))),
+        key("flux", Expect::Quantity(Kind::HeatFlux, ANY.within(-1e12, 1e12).odd(0.0, 3e8))),
         key("file", Expect::Text),
         key("net", Expect::Switch),
         key("soot_resistance", Expect::Quantity(Kind::Resistance, NOT_NEGATIVE)),
@@ -342,7 +356,7 @@ static HEATING: Section = Section {
         key("film_temperature", temperature()),
         key("station", Expect::Text),
         key("face", Expect::Word(&["hot-face", "outer-face"])),
-        key("conductance", Expect::Quantity(Kind::HeatTransferCoefficient, POSITIVE)),
+        key("conductance", Expect::Quantity(Kind::HeatTransferCoefficient, CONDUCTANCE)),
     ],
 };
 
@@ -351,7 +365,7 @@ static IDLE: Section = Section {
     keys: &[
         required(
             "coefficient",
-            Expect::Quantity(Kind::HeatTransferCoefficient, NOT_NEGATIVE.odd(0.0, 500.0)),
+            Expect::Quantity(Kind::HeatTransferCoefficient, COEFFICIENT.odd(0.0, 500.0)),
         ),
         key("temperature", temperature()),
         key("emissivity", Expect::Property(Kind::Number, SHARE)),
@@ -376,7 +390,7 @@ static OUTSIDE: Section = Section {
         key("solar_absorptivity", Expect::Number(SHARE)),
         key("convection", Expect::OneOf(&[Expect::Word(CONVECTIONS), Expect::Section(&CONVECTION)])),
         key("orientation", Expect::Word(ORIENTATIONS)),
-        key("length", Expect::Quantity(Kind::Length, POSITIVE.odd(1e-3, 50.0))),
+        key("length", Expect::Quantity(Kind::Length, LENGTH.odd(1e-3, 50.0))),
         key("limit", LIMIT),
         key("coolant", Expect::Section(&COOLANT)),
         key("fixed", temperature()),
@@ -410,7 +424,7 @@ static PROBE: Section = Section {
         key("depth", Expect::Quantity(Kind::Length, NOT_NEGATIVE)),
         key("from_outside", Expect::Quantity(Kind::Length, NOT_NEGATIVE)),
         key("in", Expect::Text),
-        key("lag", Expect::Quantity(Kind::Time, NOT_NEGATIVE.odd(0.0, 60.0))),
+        key("lag", Expect::Quantity(Kind::Time, DURATION.odd(0.0, 60.0))),
         key("accuracy", Expect::Quantity(Kind::TemperatureDifference, NOT_NEGATIVE.odd(0.0, 100.0))),
     ],
 };
@@ -420,7 +434,7 @@ static WAIT: Section = Section {
     keys: &[
         required("name", Expect::Name),
         required("where", Expect::Text),
-        key("below", Expect::Quantity(Kind::Temperature, POSITIVE.odd(250.0, 1500.0))),
+        key("below", Expect::Quantity(Kind::Temperature, TEMPERATURE.odd(250.0, 1500.0))),
         key("touch", Expect::Section(&TOUCH)),
         key("station", Expect::Text),
     ],
@@ -434,9 +448,9 @@ static TOUCH: Section = Section {
     ],
 };
 
-pub(super) const DENSITY: Expect = Expect::Quantity(Kind::Density, POSITIVE.odd(0.5, 25_000.0));
-pub(super) const HEAT_CAPACITY: Expect = Expect::Property(Kind::HeatCapacity, POSITIVE.odd(50.0, 20_000.0));
-pub(super) const CONDUCTIVITY: Expect = Expect::Property(Kind::Conductivity, POSITIVE.odd(0.005, 3000.0));
+pub(super) const DENSITY: Expect = Expect::Quantity(Kind::Density, POSITIVE.within(1e-3, 1e5).odd(0.5, 25_000.0));
+pub(super) const HEAT_CAPACITY: Expect = Expect::Property(Kind::HeatCapacity, POSITIVE.within(1e-3, 1e7).odd(50.0, 20_000.0));
+pub(super) const CONDUCTIVITY: Expect = Expect::Property(Kind::Conductivity, POSITIVE.within(1e-6, 1e6).odd(0.005, 3000.0));
 pub(super) const EMISSIVITY: Expect = Expect::OneOf(&[Expect::Property(Kind::Number, SHARE), Expect::Section(&EMISSIVITIES)]);
 
 pub(super) static MATERIAL: Section = Section {
@@ -459,8 +473,8 @@ pub(super) static MATERIAL: Section = Section {
 static EMISSIVITIES: Section = Section {
     title: "an emissivity",
     keys: &[
-        required("bare", Expect::Property(Kind::Number, SHARE)),
-        required("oxidised", Expect::Property(Kind::Number, SHARE)),
+        key("bare", Expect::Property(Kind::Number, SHARE)),
+        key("oxidised", Expect::Property(Kind::Number, SHARE)),
     ],
 };
 
@@ -495,8 +509,11 @@ static CONFIDENCE: Section = Section {
 static ALLOWANCE: Section = Section {
     title: "[allowance]",
     keys: &[
-        key("limits", Expect::Quantity(Kind::TemperatureDifference, NOT_NEGATIVE.odd(0.0, 500.0))),
-        key("heating", Expect::Number(POSITIVE.odd(1.0, 3.0))),
+        key(
+            "limits",
+            Expect::Quantity(Kind::TemperatureDifference, NOT_NEGATIVE.within(0.0, 1e5).odd(0.0, 500.0)),
+        ),
+        key("heating", Expect::Number(POSITIVE.within(1e-3, 1e3).odd(1.0, 3.0))),
     ],
 };
 
@@ -557,5 +574,8 @@ static COLUMN: Section = Section {
 
 static SOLVER: Section = Section {
     title: "[solver]",
-    keys: &[key("tolerance", Expect::Quantity(Kind::TemperatureDifference, POSITIVE.odd(1e-3, 2.0)))],
+    keys: &[key(
+        "tolerance",
+        Expect::Quantity(Kind::TemperatureDifference, POSITIVE.within(1e-6, 100.0).odd(1e-3, 2.0)),
+    )],
 };

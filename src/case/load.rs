@@ -19,6 +19,7 @@ pub fn load(path: &Path, settings: &[String]) -> Result<Case, Diagnostics> {
     let mut findings = Findings::default();
     let name = path.display().to_string();
     let refuse = |mut findings: Findings| {
+        findings.forgive_misspelt();
         findings.sort();
         Err(findings.diagnostics)
     };
@@ -98,13 +99,16 @@ fn read_tree(text: &str, source: usize, findings: &mut Findings) -> (Node, bool)
         let mut range = error.span().unwrap_or(0..0);
         range.end = range.end.min(text.len());
         range.start = range.start.min(range.end);
-        let found = Diagnostic::error("syntax", format!("this can't be read as TOML: {}", error.message())).label(error.message());
+        let mut found = Diagnostic::error("syntax", format!("this can't be read as TOML: {}", error.message()));
+        if error.message().contains("quoted") {
+            found = found.help("quantities and names stand in quotes: burn = \"2 s\"");
+        }
         findings.at(&Spot { source, range }, found);
     }
     let root = Node {
         spot: Spot { source, range: 0..0 },
         value: Value::Table(Table::of(table.get_ref(), source, text)),
-        text_start: None,
+        text_range: None,
     };
     (root, errors.is_empty())
 }

@@ -143,6 +143,10 @@ fn walk(node: Option<&Node>, expect: &'static Expect, segments: &[Segment], step
                     .enumerate()
                     .try_for_each(|(index, item)| next(Step::Item(index), Some(item), section_of(expect, section)));
             }
+            // One more phase after the last may exist; a named member may not, as nobody has named it.
+            if !section.is_named() && segment.name == items.len().to_string() {
+                return next(Step::Item(items.len()), None, section_of(expect, section));
+            }
             match names.iter().position(|name| *name == segment.name) {
                 Some(index) => next(Step::Item(index), items.get(index), section_of(expect, section)),
                 None => Err(unknown(
@@ -190,7 +194,8 @@ fn section_of(list: &'static Expect, section: &'static Section) -> &'static Expe
 
 fn table_of<'a>(node: Option<&'a Node>, segment: &Segment) -> Result<Option<&'a Table>, PathError> {
     match node {
-        None => Ok(None),
+        // What is wrong with a bad value is reported already.
+        None | Some(Node { value: Value::Bad, .. }) => Ok(None),
         Some(Node {
             value: Value::Table(table), ..
         }) => Ok(Some(table)),
@@ -234,7 +239,12 @@ pub(super) fn put(root: &mut Node, target: &Target, spots: &[Spot], value: &Node
                 });
                 table.entries.get_mut(index).map(|entry| &mut entry.node)
             }
-            (Step::Item(index), Value::List(items)) => items.get_mut(*index),
+            (Step::Item(index), Value::List(items)) => {
+                if *index == items.len() {
+                    items.push(Node::empty_table(spot.clone()));
+                }
+                items.get_mut(*index)
+            }
             // The walk that made the target went through tables and lists only.
             _ => None,
         };

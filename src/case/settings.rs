@@ -103,8 +103,8 @@ fn read_value(setting: &str, start: usize, expect: &Expect, source: usize, findi
     } else {
         Value::Text(text.to_owned())
     };
-    let text_start = matches!(value, Value::Text(_)).then_some(start);
-    Some(Node { spot, value, text_start })
+    let text_range = matches!(value, Value::Text(_)).then(|| spot.range.clone());
+    Some(Node { spot, value, text_range })
 }
 
 /// Whether a bare number or switch may stand there.

@@ -19,11 +19,16 @@ pub(super) fn nearest<'a>(written: &str, known: impl IntoIterator<Item = &'a str
         .map(|(_, name)| name)
 }
 
+/// The line of help that names it.
+pub(super) fn did_you_mean(name: &str) -> String {
+    format!("did you mean \"{name}\"?")
+}
+
 /// `did you mean "…"?`, or the list of what is known where that is short.
 pub(super) fn help<'a>(written: &str, known: impl IntoIterator<Item = &'a str>) -> Option<String> {
     let known: Vec<_> = known.into_iter().collect();
     if let Some(name) = nearest(written, known.iter().copied()) {
-        return Some(format!("did you mean \"{name}\"?"));
+        return Some(did_you_mean(name));
     }
     (!known.is_empty()).then(|| format!("known here: {}", known.join(", ")))
 }

@@ -18,8 +18,8 @@ pub(super) struct Spot {
 pub(super) struct Node {
     pub spot: Spot,
     pub value: Value,
-    /// Where the first character of a text stands, if the text is written without escapes.
-    pub text_start: Option<usize>,
+    /// The bytes of a text between its quotes, if it is written without escapes.
+    pub text_range: Option<Range<usize>>,
 }
 
 /// A value. The form check turns texts and numbers that it accepts into SI.
@@ -58,11 +58,12 @@ impl Node {
     /// From what the TOML parser found in a source.
     pub fn of(value: &Spanned<DeValue<'_>>, source: usize, text: &str) -> Self {
         let spot = Spot { source, range: value.span() };
-        let mut text_start = None;
+        let mut text_range = None;
         let value = match value.get_ref() {
             DeValue::String(string) => {
                 let raw = text.get(value.span()).unwrap_or_default();
-                text_start = raw.find(string.as_ref()).map(|offset| value.span().start + offset);
+                let start = raw.find(string.as_ref()).map(|offset| value.span().start + offset);
+                text_range = start.filter(|_| !string.is_empty()).map(|start| start..start + string.len());
                 Value::Text(string.to_string())
             }
             DeValue::Integer(number) => {
@@ -75,7 +76,7 @@ impl Node {
             DeValue::Array(list) => Value::List(list.iter().map(|item| Self::of(item, source, text)).collect()),
             DeValue::Table(table) => Value::Table(Table::of(table, source, text)),
         };
-        Self { spot, value, text_start }
+        Self { spot, value, text_range }
     }
 
     /// An empty table that a setting asks for.
@@ -83,16 +84,16 @@ impl Node {
         Self {
             spot,
             value: Value::Table(Table::default()),
-            text_start: None,
+            text_range: None,
         }
     }
 
     /// The characters at this range of the text, or the whole value where the text is written with escapes.
     pub fn inside(&self, range: Range<usize>) -> Spot {
-        match self.text_start {
-            Some(start) => Spot {
+        match &self.text_range {
+            Some(text) => Spot {
                 source: self.spot.source,
-                range: start + range.start..start + range.end,
+                range: text.start + range.start..text.start + range.end,
             },
             None => self.spot.clone(),
         }
@@ -128,10 +129,7 @@ impl Node {
 
     /// The characters between the quotes, or the value itself where it has none.
     pub fn words(&self) -> Spot {
-        match &self.value {
-            Value::Text(text) => self.inside(0..text.len()),
-            _ => self.spot.clone(),
-        }
+        self.inside(0..self.text_range.as_ref().map_or(0, Range::len))
     }
 }
 
@@ -148,6 +146,26 @@ impl Table {
             .collect();
         entries.sort_by_key(|entry| entry.key_spot.range.start);
         Self { entries }
+    }
+
+    /// These entries over those of another table: a key of both takes this one's value, and tables of both are put together likewise.
+    pub fn over(&self, below: &Self) -> Self {
+        let mut merged = below.clone();
+        for entry in &self.entries {
+            match merged.entries.iter_mut().find(|other| other.key == entry.key) {
+                Some(other) => {
+                    other.node = match (&entry.node.value, &other.node.value) {
+                        (Value::Table(upper), Value::Table(lower)) => Node {
+                            value: Value::Table(upper.over(lower)),
+                            ..entry.node.clone()
+                        },
+                        _ => entry.node.clone(),
+                    };
+                }
+                None => merged.entries.push(entry.clone()),
+            }
+        }
+        merged
     }
 
     pub fn entry(&self, key: &str) -> Option<&Entry> {

@@ -175,7 +175,26 @@ pub fn nearest_factor(name: &str) -> Option<&'static str> {
             FACTORS
                 .iter()
                 .filter(|factor| name.chars().count() >= 3 && factor.name.len() >= 2)
-                .find(|factor| strsim::osa_distance(&factor.name.to_lowercase(), &lower) <= 1)
+                .find(|factor| one_letter_off(&factor.name.to_lowercase(), &lower))
                 .map(|factor| factor.name)
         })
+}
+
+/// Whether two words differ by one letter more, less or other, or by two neighbours swapped.
+fn one_letter_off(one: &str, other: &str) -> bool {
+    let (one, other): (Vec<char>, Vec<char>) = (one.chars().collect(), other.chars().collect());
+    let shorter = one.len().min(other.len());
+    let start = one.iter().zip(&other).take_while(|pair| pair.0 == pair.1).count();
+    let end = one
+        .iter()
+        .rev()
+        .zip(other.iter().rev())
+        .take_while(|pair| pair.0 == pair.1)
+        .count()
+        .min(shorter - start);
+    match (&one[start..one.len() - end], &other[start..other.len() - end]) {
+        ([] | [_], [] | [_]) => true,
+        ([a, b], [c, d]) => a == d && b == c,
+        _ => false,
+    }
 }

@@ -41,6 +41,17 @@ pub enum Kind {
     Number,
 }
 
+/// What may be written by mistake and is due nowhere.
+const OTHERS: [(&str, [i32; 6]); 7] = [
+    ("a mass", [0, 1, 0, 0, 0, 0]),
+    ("an energy", [2, 1, -2, 0, 0, 0]),
+    ("a power", [2, 1, -3, 0, 0, 0]),
+    ("a force", [1, 1, -2, 0, 0, 0]),
+    ("a volume", [3, 0, 0, 0, 0, 0]),
+    ("heat per area", [0, 1, -2, 0, 0, 0]),
+    ("an amount of substance", [0, 0, 0, 0, 1, 0]),
+];
+
 impl Kind {
     /// All of them.
     pub const ALL: [Self; 17] = [
@@ -163,6 +174,8 @@ impl Kind {
         Self::ALL
             .into_iter()
             .find(|kind| kind.dimension() == dimension)
-            .map_or_else(|| format!("a quantity in {dimension}"), |kind| kind.words().to_owned())
+            .map(Self::words)
+            .or_else(|| OTHERS.iter().find(|other| Dimension::new(other.1) == dimension).map(|other| other.0))
+            .map_or_else(|| format!("a quantity in {dimension}"), str::to_owned)
     }
 }

@@ -32,7 +32,7 @@ impl Lowering<'_> {
         };
         let Some(node) = node else {
             phases.burn = true;
-            self.default(names::join(&names::join(path, "phases"), "0"), InputValue::Word("burn".to_owned()), "");
+            self.default(names::join(path, "phases"), InputValue::Word("[\"burn\"]".to_owned()), "");
             return Some(phases);
         };
         let list = node.list()?;

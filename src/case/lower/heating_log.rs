@@ -39,7 +39,7 @@ impl Lowering<'_> {
                 let mut found = Diagnostic::warning("no-effect", format!("the column \"{column}\" is not used"));
                 found
                     .help
-                    .extend(suggest::nearest(column, [TIME, FLUX, COEFFICIENT, GAS]).map(|near| format!("did you mean \"{near}\"?")));
+                    .extend(suggest::nearest(column, [TIME, FLUX, COEFFICIENT, GAS]).map(suggest::did_you_mean));
                 let spot = self.field_spot(&log.header_spot, index, column);
                 self.findings.doubt(&spot, found);
             }
@@ -55,6 +55,16 @@ impl Lowering<'_> {
             let rows = self.accept(LogRows::flux(&rows, net), &log.header_spot)?;
             self.tell_held(section, &rows, net);
             return Some(HeatingModel::Log(rows));
+        }
+        if !has(COEFFICIENT) && !has(GAS) {
+            let message = format!("no column of the log holds the heating: \"{FLUX}\", or \"{COEFFICIENT}\" and \"{GAS}\"");
+            self.error(
+                &log.header_spot,
+                "missing-column",
+                message,
+                format!("due are {TIME} and {FLUX}, or {TIME}, {COEFFICIENT} and {GAS}"),
+            );
+            return None;
         }
         if net && let Some(entry) = table.entry("net") {
             let message = format!("\"net\" is for a log of \"{FLUX}\"");

@@ -2,10 +2,9 @@
 
 use super::layers::LoweredLayer;
 use super::quantities::{length, transfer};
-use super::{Lowering, Node, Table};
+use super::{InputValue, Lowering, Node, Table};
 use crate::case::names;
 use crate::model::{Gap, GapGas, Joint, LimitOrigin, Resistance};
-use crate::units::Kind;
 
 /// A joint between two layers.
 pub(super) struct JointPlace<'a> {
@@ -92,9 +91,7 @@ impl Lowering<'_> {
             *value = table.value(place.start);
         }
         let path = names::join(&place.path, "emissivity");
-        for (index, value) in values.into_iter().enumerate() {
-            self.default_number(names::join(&path, &index.to_string()), value, Kind::Number);
-        }
+        self.default(path, InputValue::Word(format!("[{}, {}]", values[0], values[1])), "");
         Some(values)
     }
 }

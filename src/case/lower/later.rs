@@ -101,7 +101,7 @@ impl Lowering<'_> {
                 let key = Node {
                     spot: entry.key_spot.clone(),
                     value: Value::Text(entry.key.clone()),
-                    text_start: self.key_start(&entry.key, &entry.key_spot),
+                    text_range: self.key_range(&entry.key, &entry.key_spot),
                 };
                 let Some(targets) = self.targets(root, &key) else { continue };
                 let Some(target) = targets.first() else { continue };
@@ -115,10 +115,11 @@ impl Lowering<'_> {
         }
     }
 
-    /// Where the first character of a quoted key stands.
-    fn key_start(&self, key: &str, spot: &Spot) -> Option<usize> {
+    /// The bytes of a key between its quotes.
+    fn key_range(&self, key: &str, spot: &Spot) -> Option<std::ops::Range<usize>> {
         let text = self.findings.diagnostics.sources.get(spot.source)?.text.get(spot.range.clone())?;
-        text.find(key).map(|offset| spot.range.start + offset)
+        let start = spot.range.start + text.find(key).filter(|_| !key.is_empty())?;
+        Some(start..start + key.len())
     }
 
     /// What the input that a path names is measured in.
@@ -157,7 +158,7 @@ impl Lowering<'_> {
             let key = Node {
                 spot: entry.key_spot.clone(),
                 value: Value::Text(entry.key.clone()),
-                text_start: self.key_start(&entry.key, &entry.key_spot),
+                text_range: self.key_range(&entry.key, &entry.key_spot),
             };
             self.targets(root, &key);
             let correlation = match entry.node.value {

@@ -11,6 +11,9 @@ impl Lowering<'_> {
         let (value, kind, allowed_over) = match &node.value {
             Value::Number(value) => (*value, LimitKind::Service, 0.0),
             Value::Table(table) => {
+                if !table.has("value") {
+                    self.missing(&node.spot, "value", "in a limit: the temperature");
+                }
                 let kind = match table.node("kind") {
                     Some(word) => kind_of(word.text()?),
                     None => LimitKind::Service,

@@ -135,12 +135,9 @@ impl Lowering<'_> {
             let text = format!("the case's own material \"{name}\" takes the place of the built-in one of this name");
             self.findings.notice("material-replaced", text, None, None);
         }
-        let Some(spot) = own
+        let spot = own
             .map(|node| node.spot.clone())
-            .or_else(|| card.as_ref().map(|_| Spot { source: 0, range: 0..0 }))
-        else {
-            return None;
-        };
+            .or_else(|| card.as_ref().map(|_| Spot { source: 0, range: 0..0 }))?;
         if card.is_none() {
             for key in NEEDED.into_iter().filter(|key| own_table.is_some_and(|table| !table.has(key))) {
                 self.missing(&spot, key, "for a material of one's own");
@@ -153,7 +150,11 @@ impl Lowering<'_> {
             );
             self.findings.notice("material-changed", text, None, None);
         }
-        let pick = |key: &str| own_table.and_then(|table| table.node(key)).or_else(|| card.as_ref()?.0.node(key));
+        let merged = match &card {
+            Some((card, _)) => own_table.map_or_else(|| card.clone(), |own| own.over(card)),
+            None => own_table?.clone(),
+        };
+        let pick = |key: &str| merged.node(key);
         if let Some((table, inputs)) = &card {
             self.list_card(name, table, inputs, own_table);
         }
@@ -192,7 +193,11 @@ impl Lowering<'_> {
     /// Lists what is taken from a card, with its source and how far to trust it.
     fn list_card(&mut self, name: &str, card: &Table, inputs: &[Input], own: Option<&Table>) {
         let path = names::join("material", name);
-        for property in PROPERTIES.into_iter().filter(|key| own.is_none_or(|own| !own.has(key))) {
+        for property in PROPERTIES {
+            let given = own.and_then(|own| own.node(property));
+            if given.is_some_and(|given| given.table().is_none()) {
+                continue;
+            }
             let prefix = names::join(&path, property);
             let source = said(card, "source", property).unwrap_or("no source given");
             let from = match said(card, "confidence", property) {
@@ -259,10 +264,15 @@ impl Lowering<'_> {
 
     fn emissivity(&mut self, node: &Node) -> Option<Emissivity> {
         match &node.value {
-            Value::Table(table) => Some(Emissivity::Two {
-                bare: self.share(table.node("bare")?)?,
-                oxidised: self.share(table.node("oxidised")?)?,
-            }),
+            Value::Table(table) => {
+                for key in ["bare", "oxidised"].into_iter().filter(|key| !table.has(key)) {
+                    self.missing(&node.spot, key, "in an emissivity of two values");
+                }
+                Some(Emissivity::Two {
+                    bare: self.share(table.node("bare")?)?,
+                    oxidised: self.share(table.node("oxidised")?)?,
+                })
+            }
             _ => self.share(node).map(Emissivity::One),
         }
     }

@@ -135,6 +135,8 @@ impl Lowering<'_> {
     fn accept<T>(&mut self, part: Result<T, ModelError>, spot: &Spot) -> Option<T> {
         match part {
             Ok(part) => Some(part),
+            // Each repeated name is reported where it stands.
+            Err(ModelError::Repeated { .. }) if self.findings.diagnostics.list.iter().any(|found| found.code == "repeated-name") => None,
             Err(error) => {
                 self.error(spot, "not-accepted", error.to_string(), "");
                 None

@@ -206,8 +206,11 @@ impl Lowering<'_> {
             return None;
         }
         self.misfits(table, &["section", "perimeter"], "except in a bar");
+        let heating = table.table("heating").and_then(|heating| heating.text("model"));
         // Area ratio, side and position are for Bartz's equation and for coupled cases; no heating model that is built reads them.
-        self.without_effect(table, &["area_ratio", "side", "position"], "with this heating model");
+        if heating != Some("bartz") {
+            self.without_effect(table, &["area_ratio", "side", "position"], "with this heating model");
+        }
         if word == "plane" {
             self.misfits(table, &["inner_diameter"], "on a plane");
             return if table.has("shape") && table.text("shape").is_none() {
