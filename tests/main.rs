@@ -1,3 +1,5 @@
 //! Checks of the whole against something outside it, and of the program as people use it. One binary: it links once.
 
+mod checks;
+mod properties;
 mod walls;
