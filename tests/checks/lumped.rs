@@ -1,7 +1,7 @@
 //! Bodies of one temperature: waits under radiation, convection and both, a burn to a limit; and two bodies that exchange heat after a burn.
 //!
 //! Incropera et al., Fundamentals of Heat and Mass Transfer, 7th ed., eqs 5.6, 5.18, 5.19; the pair by its two eigenvalues (any text on linear
-//! systems). Numbers COMPUTED with 30 digits. A conductivity of 1e6 W/(m·K) makes a layer one body.
+//! systems). Numbers COMPUTED with 30 digits. A conductivity of 1e6 W/(m·K) and more makes a layer one body.
 
 use crate::walls::*;
 use soakdown::model::*;
@@ -84,7 +84,7 @@ const PAIRS: [[f64; 9]; 3] = [
 
 /// A layer of one temperature, of this heat capacity per area.
 fn lump(name: &str, capacity: f64) -> Result<Layer, ModelError> {
-    layer(name, &material(1e6, 1000.0, capacity)?, 0.001)
+    layer(name, &material(1e8, 1000.0, capacity)?, 0.001)
 }
 
 fn waits() -> Result<Vec<Case>, ModelError> {

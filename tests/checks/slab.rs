@@ -324,7 +324,7 @@ fn a_line_of_temperatures_evens_out_as_the_series_says() -> Outcome {
         ..Wall::of(vec![body(COPPER, thickness)?])?
     }
     .model()?;
-    let rows = from_state(&model, 2.0, 0.005, &times, |map| {
+    let rows = from_state(&model, 6.0, 0.002, &times, |map| {
         map.depths.iter().map(|depth| 400.0 + 600.0 * depth / thickness).collect()
     })?;
     for (row, expected) in rows.iter().zip(FROM_A_LINE) {

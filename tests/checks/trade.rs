@@ -19,7 +19,7 @@ fn radiation_grows_until_losses_equal_the_input_and_the_temperature_stands_still
     let (answers, trace) = history(&model, &times)?;
     for pair in trace.windows(2) {
         assert!(pair[1].flux_out >= pair[0].flux_out - 1e-6 * flux, "losses fall while heating: {pair:?}");
-        assert!(pair[1].faces[1] >= pair[0].faces[1] - 1e-6, "the shell cools while heating: {pair:?}");
+        assert!(pair[1].faces[1] >= pair[0].faces[1] - 1e-4, "the shell cools while heating: {pair:?}");
     }
     assert!(trace[0].flux_out < 0.5 * flux, "not a start-up: {:?}", trace[0]);
     let [before, last] = [&trace[38], &trace[39]];
@@ -44,11 +44,11 @@ fn radiation_grows_until_losses_equal_the_input_and_the_temperature_stands_still
 fn after_shutdown_the_hotter_part_feeds_the_cooler_one_until_both_are_level_then_the_whole_drops_evenly() -> Outcome {
     let model = Wall {
         heating: film(2500.0, 2800.0)?,
-        outer: outside(8.0, 0.0)?,
+        outer: outside(4.0, 0.0)?,
         phases: vec![burn(6.0)?],
         waits: vec![(Place::Everywhere, 330.0)],
         ..Wall::of(vec![
-            layer("liner", &material(40.0, 8000.0, 500.0)?, 0.006)?.with_joint(contact(400.0)?),
+            layer("liner", &material(40.0, 8000.0, 500.0)?, 0.006)?.with_joint(contact(2000.0)?),
             layer("jacket", &material(40.0, 8000.0, 500.0)?, 0.004)?,
         ])?
     }
@@ -81,7 +81,7 @@ fn after_shutdown_the_hotter_part_feeds_the_cooler_one_until_both_are_level_then
     // The jacket stands still where it gets from the liner what the air takes.
     let top = station.soak_back.outer_face_peak;
     let (_, at_top) = history(&model, &[top])?;
-    let passed = 400.0 * (at_top[0].faces[1] - at_top[0].faces[2]);
+    let passed = 2000.0 * (at_top[0].faces[1] - at_top[0].faces[2]);
     assert!(
         (passed / at_top[0].flux_out - 1.0).abs() < 0.05,
         "{passed} against {}",

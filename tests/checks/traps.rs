@@ -420,7 +420,7 @@ fn heat_of_a_tail_after_the_last_burn_counts_for_peaks_and_waits() -> Outcome {
     // u' = r (f (1 − s/τ) − u): u = f (1 − s/τ + 1/(r τ)) + c exp(−r s).
     let constant = end - full * (1.0 + 1.0 / (rate * tail));
     let rise = |since: f64| full * (1.0 - since / tail + 1.0 / (rate * tail)) + constant * (-rate * since).exp();
-    let top = (-rate * rate * tail * constant / full).ln() / rate;
+    let top = (-rate * tail * constant / full).ln() / rate;
     let wait = tail + (rise(tail) / 50.0).ln() / rate;
     let station = &answered(&model)?.stations[0];
     assert!(top > 1.0 && top < tail, "{top} s");

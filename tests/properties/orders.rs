@@ -94,16 +94,16 @@ fn order_two_in_the_grid_across_layers_and_a_contact() -> Outcome {
 /// Largest error of any node at the end against the mean step, on one grid.
 fn time_order(model: &Model, time: f64) -> Result<f64, Box<dyn std::error::Error>> {
     let grid = Grid::new(model, &model.stations()[0], 1.0);
-    let (exact, most) = state(model, &grid, 1e-10, 300.0, time)?;
+    let (exact, most) = state(model, &grid, 1e-8, 300.0, time)?;
     let mut errors = Vec::new();
-    for tolerance in [1e-1, 1e-2, 1e-3, 1e-4, 1e-5, 1e-6] {
+    for tolerance in [1e-1, 1e-2, 1e-3, 1e-4, 1e-5] {
         let (temperatures, steps) = state(model, &grid, tolerance, 300.0, time)?;
         let error = temperatures
             .iter()
             .zip(&exact)
             .map(|(found, exact)| (found - exact).abs())
             .fold(0.0, f64::max);
-        assert!(steps < most && error > 1e-11, "{steps} steps, {error} K");
+        assert!(steps < most && error > 1e-9, "{steps} steps, {error} K");
         errors.push((time / steps as f64, error));
     }
     let order = slope(&errors);
