@@ -8,6 +8,8 @@ pub mod case;
 pub mod diagnostics;
 pub mod heat;
 pub mod model;
+pub mod report;
 pub mod run;
 pub mod solve;
+pub mod units;
 pub mod wall;

@@ -1,2 +1,8 @@
 //! The `soakdown` program.
-fn main() {}
+#![deny(unsafe_code)]
+
+mod cli;
+
+fn main() -> std::process::ExitCode {
+    cli::start(std::env::args_os()).into()
+}

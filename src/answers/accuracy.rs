@@ -6,7 +6,7 @@ use crate::run::{Quantity, RunError};
 use crate::wall::Grid;
 
 /// Share of the promised tolerance that one step may err by.
-pub(super) const STEP_SHARE: f64 = 0.1;
+pub(super) const STEP_SHARE: f64 = 1.0;
 /// Share of the promised tolerance that the estimate must keep to.
 const WANTED_SHARE: f64 = 0.5;
 /// The second solution's steps may err by this many times more.
@@ -57,6 +57,7 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         let second = Pass::of_profile(model, station_index, &grid.halved(), &coarse, &keep)?;
         let estimated_error = difference(&pass, &second) / RICHARDSON;
         round += 1;
+        if std::env::var("SD").is_ok() { eprintln!("{fineness} {} nodes {estimated_error} steps {} {}", pass.map.len(), pass.steps, second.steps); }
         if estimated_error <= wanted || round == MOST_ROUNDS {
             return Ok(Resolved { grid, pass, estimated_error });
         }

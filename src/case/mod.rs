@@ -1,16 +1,24 @@
 //! Case files: the only room that knows TOML. Text and path in; a checked [`Case`] out, or every mistake of the file at once.
+//!
+//! text → tree (every value with its place) → settings put on it → form check (names, kinds, sizes; values in SI) → lowering (references and rules).
 
 mod checked;
+mod digest;
+mod findings;
+mod form;
+mod keys;
+mod library;
+mod load;
+mod lower;
+mod names;
+mod paths;
+mod settings;
+mod suggest;
+mod touch;
+mod tree;
+
+#[cfg(test)]
+mod tests;
 
 pub use checked::{Case, CaseFile, Input, InputValue};
-
-use crate::diagnostics::Diagnostics;
-use std::path::Path;
-
-/// Reads a case file, applies settings (`PATH=VALUE`, later ones win) and checks everything.
-///
-/// # Errors
-/// With every mistake found, each at its place.
-pub fn load(_path: &Path, _settings: &[String]) -> Result<Case, Diagnostics> {
-    Err(Diagnostics::default())
-}
+pub use load::load;

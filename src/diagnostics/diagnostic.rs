@@ -46,6 +46,49 @@ pub struct Diagnostics {
     pub list: Vec<Diagnostic>,
 }
 
+impl Diagnostic {
+    /// A mistake for which no file is to blame, until [`Diagnostic::at`] says otherwise.
+    pub fn error(code: &'static str, message: impl Into<String>) -> Self {
+        Self {
+            severity: Severity::Error,
+            code,
+            message: message.into(),
+            place: None,
+            label: String::new(),
+            help: Vec::new(),
+        }
+    }
+
+    /// A doubt for which no file is to blame, until [`Diagnostic::at`] says otherwise.
+    pub fn warning(code: &'static str, message: impl Into<String>) -> Self {
+        Self {
+            severity: Severity::Warning,
+            ..Self::error(code, message)
+        }
+    }
+
+    /// The same, at these bytes of this source.
+    #[must_use]
+    pub fn at(mut self, source: usize, range: Range<usize>) -> Self {
+        self.place = Some((source, range));
+        self
+    }
+
+    /// The same, with what is said at the underlined characters.
+    #[must_use]
+    pub fn label(mut self, label: impl Into<String>) -> Self {
+        self.label = label.into();
+        self
+    }
+
+    /// The same, with one more line of help.
+    #[must_use]
+    pub fn help(mut self, help: impl Into<String>) -> Self {
+        self.help.push(help.into());
+        self
+    }
+}
+
 impl Diagnostics {
     /// Whether anything forbids going on.
     pub fn has_errors(&self) -> bool {

@@ -21,7 +21,7 @@ pub use profile::{Phase, PhaseKind, Profile};
 pub use question::{Allowance, Place, Wait};
 pub use si::*;
 pub use station::{Probe, Shape, Station, StationValues};
-pub use table::Table;
+pub use table::{Table, TablePoint};
 
 /// One planning question, ready to be run: everything that the case file says, checked.
 #[derive(Clone, Debug)]

@@ -3,6 +3,9 @@
 use super::{Kelvin, ModelError};
 use uom::si::{Dimension, Quantity, SI, f64::ThermodynamicTemperature};
 
+/// One point of a table: a temperature and the value there.
+pub type TablePoint<D> = (ThermodynamicTemperature, Quantity<D, SI<f64>, f64>);
+
 /// A property against temperature: straight lines between the points, constant outside. One point is a constant.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Table {
@@ -21,7 +24,7 @@ impl Table {
     ///
     /// # Errors
     /// When there is no point or the temperatures do not rise.
-    pub fn new<D: Dimension + ?Sized>(points: &[(ThermodynamicTemperature, Quantity<D, SI<f64>, f64>)]) -> Result<Self, ModelError> {
+    pub fn new<D: Dimension + ?Sized>(points: &[TablePoint<D>]) -> Result<Self, ModelError> {
         if points.is_empty() {
             return Err(ModelError::Missing {
                 what: "a point of the table",

@@ -66,6 +66,11 @@ impl Course {
         &self.integrator.followers
     }
 
+    /// What it has cost so far.
+    pub fn effort(&self) -> crate::solve::Effort {
+        self.integrator.effort
+    }
+
     /// Accepted steps so far.
     pub fn steps(&self) -> usize {
         self.integrator.effort.steps

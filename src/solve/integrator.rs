@@ -21,7 +21,7 @@ impl Settings {
     pub fn with_tolerance(tolerance: f64) -> Self {
         Self {
             tolerance,
-            growth: 6.0,
+            growth: 8.0,
             safety: 0.9,
             most_steps: 1_000_000,
         }
@@ -164,7 +164,7 @@ impl<const L: usize> Integrator<L> {
             let step = length.map(|length| trial * length);
             let error = self.attempt(system, share, trial, step, depends_on_time);
             let wanted = settings.safety * (settings.tolerance / error).powf(0.2);
-            if !(error <= settings.tolerance) {
+            if error > settings.tolerance {
                 self.effort.rejected += 1;
                 grown = 1.0;
                 size = trial * if wanted.is_finite() { wanted.clamp(0.1, 0.9) } else { 0.1 };
@@ -217,10 +217,10 @@ impl<const L: usize> Integrator<L> {
         }
     }
 
-    /// The first step after a jump: short enough that no unknown moves by more than ten tolerances, by its rate (the jump of the flux into the
+    /// The first step after a jump: short enough that no unknown moves by more than twenty tolerances, by its rate (the jump of the flux into the
     /// outermost cell) or by the growth of its rate.
     fn first_step<S: System<L>>(&self, system: &S, settings: &Settings, length: Slot<L>, depends_on_time: bool) -> Result<f64, SolveError> {
-        let allowed = 10.0 * settings.tolerance;
+        let allowed = 20.0 * settings.tolerance;
         let mut size: f64 = 1.0;
         let weights = system.weights();
         for (i, weight) in weights.iter().enumerate() {

@@ -62,8 +62,16 @@ impl<const L: usize> Step<'_, L> {
     }
 }
 
+#[inline]
 fn coefficients<const L: usize>(stages: &[Vec<Slot<L>>; STAGES], index: usize, member: usize) -> [f64; 3] {
-    DENSE.map(|row| row.iter().zip(stages).map(|(weight, stage)| weight * stage[index][member]).sum())
+    let mut sums = [0.0; 3];
+    for (k, stage) in stages.iter().enumerate() {
+        let value = stage[index][member];
+        for (sum, row) in sums.iter_mut().zip(&DENSE) {
+            *sum += row[k] * value;
+        }
+    }
+    sums
 }
 
 fn dense<const L: usize>(before: Slot<L>, after: Slot<L>, stages: &[Vec<Slot<L>>; STAGES], index: usize, theta: f64) -> Slot<L> {

@@ -49,39 +49,31 @@ impl<const L: usize> Tridiagonal<L> {
             back,
             middle,
         } = self;
-        let mut pivot = |i: usize, neighbour: Option<usize>| {
-            let mut value = [0.0; L];
+        let (lower, diagonal, upper) = (&lower[..len], &diagonal[..len], &upper[..len]);
+        let (multiplier, inverse, back) = (&mut multiplier[..len], &mut inverse[..len], &mut back[..len]);
+        // Each side is carried in registers: pivot of the row before, from the left and from the right.
+        let entry = |i: usize| -> Slot<L> { std::array::from_fn(|l| shift - step[l] * diagonal[i][l]) };
+        let mut left = entry(0);
+        let mut right = entry(len - 1);
+        let mut eliminate = |i: usize, before: usize, own: &Slot<L>, across: &Slot<L>, pivot: &mut Slot<L>| {
             for l in 0..L {
-                value[l] = shift - step[l] * diagonal[i][l];
-                if let Some(done) = neighbour {
-                    // Row i loses its entry in column `done`; that row's entry in column i is the outer off-diagonal seen from the other side.
-                    let (own, other) = if done < i {
-                        (lower[i][l], upper[done][l])
-                    } else {
-                        (upper[i][l], lower[done][l])
-                    };
-                    let factor = -step[l] * own * inverse[done][l];
-                    multiplier[i][l] = factor;
-                    value[l] += factor * step[l] * other;
-                }
+                let inverted = 1.0 / pivot[l];
+                let factor = -step[l] * own[l] * inverted;
+                inverse[before][l] = inverted;
+                multiplier[i][l] = factor;
+                back[before][l] = step[l] * across[l] * inverted;
+                pivot[l] = shift - step[l] * diagonal[i][l] + factor * step[l] * across[l];
             }
-            if i + 1 < half || i > half {
-                for l in 0..L {
-                    inverse[i][l] = 1.0 / value[l];
-                }
-            }
-            value
         };
-        let mut left = pivot(0, None);
-        let mut right = pivot(len - 1, None);
         for i in 1..half {
-            left = pivot(i, Some(i - 1));
-            if len - 1 - i >= half {
-                right = pivot(len - 1 - i, Some(len - i));
+            eliminate(i, i - 1, &lower[i], &upper[i - 1], &mut left);
+            let j = len - 1 - i;
+            if j >= half {
+                eliminate(j, j + 1, &upper[j], &lower[j + 1], &mut right);
             }
         }
-        if len % 2 == 1 && len > 2 {
-            right = pivot(half, Some(half + 1));
+        if len - half > half {
+            eliminate(half, half + 1, &upper[half], &lower[half + 1], &mut right);
         }
         for l in 0..L {
             let across = -step[l] * upper[half - 1][l];
@@ -92,16 +84,6 @@ impl<const L: usize> Tridiagonal<L> {
             middle[2][l] = -down * determinant;
             middle[3][l] = left[l] * determinant;
         }
-        for i in 0..half.saturating_sub(1) {
-            for l in 0..L {
-                back[i][l] = step[l] * upper[i][l] * inverse[i][l];
-            }
-        }
-        for i in half + 1..len {
-            for l in 0..L {
-                back[i][l] = step[l] * lower[i][l] * inverse[i][l];
-            }
-        }
     }
 
     /// Solves the factored system in place.
@@ -109,40 +91,43 @@ impl<const L: usize> Tridiagonal<L> {
         let len = x.len();
         let half = len / 2;
         let (multiplier, inverse, back) = (&self.multiplier[..len], &self.inverse[..len], &self.back[..len]);
+        let mut left = x[0];
+        let mut right = x[len - 1];
+        let forward = |i: usize, carried: &mut Slot<L>, x: &mut [Slot<L>]| {
+            for l in 0..L {
+                carried[l] = x[i][l] - multiplier[i][l] * carried[l];
+            }
+            x[i] = *carried;
+        };
         for i in 1..half {
+            forward(i, &mut left, x);
             let j = len - 1 - i;
-            for l in 0..L {
-                x[i][l] -= multiplier[i][l] * x[i - 1][l];
-            }
             if j >= half {
-                for l in 0..L {
-                    x[j][l] -= multiplier[j][l] * x[j + 1][l];
-                }
+                forward(j, &mut right, x);
             }
         }
-        if len % 2 == 1 && len > 2 {
-            for l in 0..L {
-                x[half][l] -= multiplier[half][l] * x[half + 1][l];
-            }
+        if len - half > half {
+            forward(half, &mut right, x);
         }
+        let (first, second) = (left, right);
         for l in 0..L {
-            let (first, second) = (x[half - 1][l], x[half][l]);
-            x[half - 1][l] = self.middle[0][l] * first + self.middle[1][l] * second;
-            x[half][l] = self.middle[2][l] * first + self.middle[3][l] * second;
+            left[l] = self.middle[0][l] * first[l] + self.middle[1][l] * second[l];
+            right[l] = self.middle[2][l] * first[l] + self.middle[3][l] * second[l];
         }
-        for k in 1..=half {
-            if k < half {
-                let i = half - 1 - k;
-                for l in 0..L {
-                    x[i][l] = x[i][l] * inverse[i][l] + back[i][l] * x[i + 1][l];
-                }
+        x[half - 1] = left;
+        x[half] = right;
+        let backward = |i: usize, carried: &mut Slot<L>, x: &mut [Slot<L>]| {
+            for l in 0..L {
+                carried[l] = x[i][l] * inverse[i][l] + back[i][l] * carried[l];
             }
-            let j = half + k;
-            if j < len {
-                for l in 0..L {
-                    x[j][l] = x[j][l] * inverse[j][l] + back[j][l] * x[j - 1][l];
-                }
-            }
+            x[i] = *carried;
+        };
+        for k in 1..half {
+            backward(half - 1 - k, &mut left, x);
+            backward(half + k, &mut right, x);
+        }
+        if len - half > half {
+            backward(len - 1, &mut right, x);
         }
     }
 }

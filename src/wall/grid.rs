@@ -54,6 +54,14 @@ impl Grid {
         Self { layers }
     }
 
+    /// A grid of equal cells, so many in each layer.
+    pub fn uniform(cells: &[usize]) -> Self {
+        let shares = |count: &usize| (0..=*count).map(|index| index as f64 / *count as f64).collect();
+        Self {
+            layers: cells.iter().map(shares).collect(),
+        }
+    }
+
     /// Every second node: cells of twice the width, for an estimate of the error.
     #[must_use]
     pub fn halved(&self) -> Self {

@@ -449,17 +449,15 @@ impl<const L: usize> Wall<L> {
             }
         }
         for l in 0..L {
-            let (inward, slope) = self.hot_flux(l, share, self.temperature[0][l]);
+            let (inward, inward_slope) = self.hot_flux(l, share, self.temperature[0][l]);
+            // What leaves over a held face is what the last pair of nodes conducts into it.
+            let (outward, outward_slope) = if self.held { (self.flux[last][l], 0.0) } else { self.outer_flux(l, self.temperature[last][l]) };
             self.flux[0][l] = inward;
-            self.flux_by_own[0][l] = slope * self.by_unknown[0][l];
-            if self.held {
-                // What leaves over a held face is what the last pair of nodes conducts into it.
-                self.flux[last + 1][l] = self.flux[last][l];
-                self.flux_by_before[last + 1][l] = 0.0;
-            } else {
-                let (outward, slope) = self.outer_flux(l, self.temperature[last][l]);
-                self.flux[last + 1][l] = outward;
-                self.flux_by_before[last + 1][l] = slope * self.by_unknown[last][l];
+            self.flux[last + 1][l] = outward;
+            // Between two Jacobians the derivatives must stay those that the matrix was made of, or the ledgers no longer close.
+            if SLOPES {
+                self.flux_by_own[0][l] = inward_slope * self.by_unknown[0][l];
+                self.flux_by_before[last + 1][l] = outward_slope * self.by_unknown[last][l];
             }
         }
     }

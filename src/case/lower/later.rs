@@ -1,0 +1,313 @@
+//! Sections that later commands use: their names, units, ranges and paths are checked; then they say that nothing uses them yet.
+
+use super::station::LoweredStation;
+use super::{Input, InputValue, Lowering, Node, Table, Value};
+use crate::case::form::{Form, unit_mistake};
+use crate::case::keys::{Expect, NOT_NEGATIVE, POSITIVE};
+use crate::case::names;
+use crate::case::paths::{self, Target};
+use crate::case::settings::path_mistake;
+use crate::case::tree::Spot;
+use crate::units::{self, Kind};
+
+/// What an input is measured in, where it is a number or a table of them.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+enum Measure {
+    One(Kind),
+    Table,
+}
+
+impl Lowering<'_> {
+    pub(super) fn later(&mut self, root: &Node, stations: &[LoweredStation]) {
+        let Some(case) = root.table() else { return };
+        self.engine(case);
+        self.variants(root, case);
+        for (index, spread) in case.list("spread").unwrap_or_default().iter().enumerate() {
+            if let Some(table) = spread.table() {
+                self.spread(root, table, &format!("spread.{index}"));
+            }
+        }
+        if let Some(fit) = case.table("fit") {
+            self.fit(root, fit, stations);
+        }
+        let bartz = case.list("station").unwrap_or_default().iter().any(|station| {
+            let heating = station.table().and_then(|station| station.table("heating"));
+            heating.and_then(|heating| heating.text("model")) == Some("bartz")
+        });
+        let used_by = [
+            ("engine", "no heating model of this case uses it"),
+            ("cut_off", "plan and redline, which are not built yet, use it; burns run as written"),
+            ("variant", "compare and plan, which are not built yet, use it; the case runs as written"),
+            ("spread", "spread and redline, which are not built yet, use it; the case runs as written"),
+            ("abort", "redline, which is not built yet, uses it"),
+            ("fit", "fit, which is not built yet, uses it"),
+        ];
+        for (name, who) in used_by {
+            if case.has(name) && !(name == "engine" && bartz) {
+                let brackets = if matches!(name, "variant" | "spread") {
+                    format!("[[{name}]]")
+                } else {
+                    format!("[{name}]")
+                };
+                self.findings.notice(
+                    "section-unused",
+                    format!("{brackets} is checked and has no effect on this answer: {who}"),
+                    None,
+                    None,
+                );
+            }
+        }
+    }
+
+    fn engine(&mut self, case: &Table) {
+        let Some(engine) = case.table("engine") else { return };
+        self.exclude(engine, &["propellants", "gas"]);
+        if let (Some(propellants), false) = (engine.entry("propellants"), engine.has("mixture_ratio")) {
+            self.missing(&propellants.key_spot, "mixture_ratio", "with \"propellants\"");
+        }
+        if !engine.has("propellants") {
+            self.misfits(engine, &["mixture_ratio"], "without \"propellants\"");
+        }
+    }
+
+    /// The targets of a path written in a text of the case.
+    fn targets(&mut self, root: &Node, node: &Node) -> Option<Vec<Target>> {
+        let text = node.text()?;
+        match paths::split(text).and_then(|segments| paths::resolve(root, &segments)) {
+            Ok(targets) => Some(targets),
+            Err(error) => {
+                let spot = node.inside(error.range.clone());
+                self.findings.at(&spot, path_mistake(error));
+                None
+            }
+        }
+    }
+
+    fn variants(&mut self, root: &Node, case: &Table) {
+        for variant in case.list("variant").unwrap_or_default() {
+            let Some(set) = variant.table().and_then(|table| table.node("set")) else {
+                continue;
+            };
+            let Some(table) = set.table() else {
+                if !matches!(set.value, Value::Bad) {
+                    let due = "a table of paths and values is due, { \"surroundings.air\" = \"40 degC\" }";
+                    self.error(&set.spot, "wrong-type", "this is no table", due);
+                }
+                continue;
+            };
+            let name = variant.table().and_then(|table| table.text("name")).unwrap_or_default();
+            let prefix = names::join(&names::join("variant", name), "set");
+            for entry in &table.entries {
+                let key = Node {
+                    spot: entry.key_spot.clone(),
+                    value: Value::Text(entry.key.clone()),
+                    text_start: self.key_start(&entry.key, &entry.key_spot),
+                };
+                let Some(targets) = self.targets(root, &key) else { continue };
+                let Some(target) = targets.first() else { continue };
+                let mut value = entry.node.clone();
+                let mut form = Form {
+                    findings: &mut *self.findings,
+                    inputs: &mut *self.inputs,
+                };
+                form.node(&mut value, target.expect, &names::join(&prefix, &entry.key));
+            }
+        }
+    }
+
+    /// Where the first character of a quoted key stands.
+    fn key_start(&self, key: &str, spot: &Spot) -> Option<usize> {
+        let text = self.findings.diagnostics.sources.get(spot.source)?.text.get(spot.range.clone())?;
+        text.find(key).map(|offset| spot.range.start + offset)
+    }
+
+    /// What the input that a path names is measured in.
+    fn measure(&mut self, root: &Node, node: &Node) -> Option<Measure> {
+        let targets = self.targets(root, node)?;
+        let target = targets.first()?;
+        let now = paths::value(root, target).map(|value| &value.value);
+        let measure = measure_of(target.expect, now);
+        if measure.is_none() {
+            let message = "this path names no number";
+            self.error(&node.words(), "unknown-path", message, "a number, a quantity or a property table is due");
+        }
+        measure
+    }
+
+    fn spread(&mut self, root: &Node, table: &Table, path: &str) {
+        let measure = table.node("input").and_then(|input| self.measure(root, input));
+        let shape = table.text("shape");
+        let needs_sigmas = matches!(shape, Some("normal" | "log-normal"));
+        if let (true, false, Some(entry)) = (needs_sigmas, table.has("sigmas"), table.entry("shape")) {
+            let why = "with this shape: how many standard deviations \"by\" is";
+            self.missing(&entry.node.words(), "sigmas", why);
+        }
+        if shape.is_some() && !needs_sigmas {
+            self.misfits(table, &["sigmas"], "with this shape, where \"by\" is the bound");
+        }
+        if let Some(by) = table.node("by") {
+            self.spread_by(by, measure, shape, path);
+        }
+        let Some(with) = table.node("with") else { return };
+        let Some(correlations) = with.table() else {
+            self.error(&with.spot, "wrong-type", "this is no table", "a table of paths and correlations is due");
+            return;
+        };
+        for entry in &correlations.entries {
+            let key = Node {
+                spot: entry.key_spot.clone(),
+                value: Value::Text(entry.key.clone()),
+                text_start: self.key_start(&entry.key, &entry.key_spot),
+            };
+            self.targets(root, &key);
+            let correlation = match entry.node.value {
+                #[expect(clippy::cast_precision_loss, reason = "checked against −1 … 1")]
+                Value::Integer(number) => number as f64,
+                Value::Float(number) => number,
+                _ => f64::NAN,
+            };
+            if !(-1.0..=1.0).contains(&correlation) {
+                self.error(
+                    &entry.node.spot,
+                    "out-of-range",
+                    "this is no correlation",
+                    "a bare number from -1 to 1 is due",
+                );
+            }
+        }
+    }
+
+    /// How far an input strays: `"20 %"`, `"0.1 mm"`, `"factor 2"`, or a bare number for a pure number.
+    fn spread_by(&mut self, by: &Node, measure: Option<Measure>, shape: Option<&str>, path: &str) {
+        let (value, unit) = match &by.value {
+            Value::Text(text) => {
+                if let Some(factor) = text.trim().strip_prefix("factor") {
+                    let factor = factor.trim().parse::<f64>().ok().filter(|factor| factor.is_finite() && *factor > 1.0);
+                    let Some(factor) = factor else {
+                        return self.error(&by.words(), "bad-number", "a factor above 1 is due", "written \"factor 2\"");
+                    };
+                    if shape.is_some_and(|shape| shape != "log-normal") {
+                        self.error(
+                            &by.words(),
+                            "key-does-not-fit",
+                            "\"factor\" goes with the shape \"log-normal\"",
+                            "give a share or an absolute value",
+                        );
+                    }
+                    (factor, "")
+                } else {
+                    let due = match measure {
+                        Some(Measure::One(kind)) => as_difference(kind),
+                        Some(Measure::Table) => Kind::Number,
+                        None => return,
+                    };
+                    match units::read_spread(text, due) {
+                        Ok((value, is_share)) => {
+                            if measure == Some(Measure::Table) && !is_share {
+                                return self.error(&by.words(), "wrong-unit", "a whole table strays by a share", "written \"10 %\"");
+                            }
+                            (value, if is_share { "" } else { due.si() })
+                        }
+                        Err(error) => {
+                            let spot = if error.range.is_empty() {
+                                by.spot.clone()
+                            } else {
+                                by.inside(error.range.clone())
+                            };
+                            return self.findings.at(&spot, unit_mistake(&error).help("or a share of the value: \"20 %\""));
+                        }
+                    }
+                }
+            }
+            #[expect(clippy::cast_precision_loss, reason = "a spread is no exact number")]
+            Value::Integer(number) => (*number as f64, ""),
+            Value::Float(number) => (*number, ""),
+            Value::Bad => return,
+            _ => return self.error(&by.spot, "wrong-type", "this is no spread", "\"20 %\", \"0.1 mm\" or \"factor 2\" is due"),
+        };
+        let bare = !matches!(by.value, Value::Text(_));
+        if bare && measure.is_some_and(|measure| measure != Measure::One(Kind::Number)) {
+            return self.error(
+                &by.spot,
+                "missing-unit",
+                "a bare number",
+                "a share, \"20 %\", or a value with its unit is due",
+            );
+        }
+        if !(value.is_finite() && value > 0.0) {
+            return self.error(
+                &by.words(),
+                "out-of-range",
+                "a spread must be above 0",
+                "leave the input out where it is certain",
+            );
+        }
+        self.inputs.push(Input {
+            path: format!("{path}.by"),
+            value: InputValue::Number(value),
+            unit,
+            from: self.findings.origin(&by.spot).to_owned(),
+        });
+    }
+
+    fn fit(&mut self, root: &Node, fit: &Table, stations: &[LoweredStation]) {
+        for (index, free) in fit.list("free").unwrap_or_default().iter().enumerate() {
+            let Some(table) = free.table() else { continue };
+            let Some(measure) = table.node("input").and_then(|input| self.measure(root, input)) else {
+                continue;
+            };
+            let expect = match measure {
+                Measure::One(Kind::Number) => Expect::Number(NOT_NEGATIVE),
+                Measure::One(kind) => Expect::Quantity(kind, super::super::keys::ANY),
+                Measure::Table => Expect::Number(POSITIVE),
+            };
+            let mut bounds = [None; 2];
+            for (bound, key) in bounds.iter_mut().zip(["from", "to"]) {
+                let Some(node) = table.node(key) else { continue };
+                let mut node = node.clone();
+                let mut form = Form {
+                    findings: &mut *self.findings,
+                    inputs: &mut *self.inputs,
+                };
+                form.node(&mut node, &expect, &format!("fit.free.{index}.{key}"));
+                *bound = node.number();
+            }
+            if let ([Some(from), Some(to)], Some(node)) = (bounds, table.node("to"))
+                && to <= from
+            {
+                self.error(&node.words(), "out-of-range", "\"to\" must lie above \"from\"", "the range is empty");
+            }
+        }
+        for column in fit.list("columns").unwrap_or_default() {
+            let Some(probe) = column.table().and_then(|table| table.node("probe")) else {
+                continue;
+            };
+            let Some(name) = probe.text() else { continue };
+            let known: Vec<_> = stations
+                .iter()
+                .flat_map(|station| station.probes.iter().map(|probe| format!("{}/{probe}", station.name)))
+                .collect();
+            if !known.iter().any(|known| known == name) {
+                self.unknown(probe, "unknown-place", "the probe", known.iter().map(String::as_str));
+            }
+        }
+    }
+}
+
+/// A spread of a temperature is a difference.
+fn as_difference(kind: Kind) -> Kind {
+    if kind == Kind::Temperature { Kind::TemperatureDifference } else { kind }
+}
+
+fn measure_of(expect: &Expect, now: Option<&Value>) -> Option<Measure> {
+    match expect {
+        Expect::Quantity(kind, _) => Some(Measure::One(*kind)),
+        Expect::Number(_) | Expect::Whole(..) => Some(Measure::One(Kind::Number)),
+        Expect::Property(kind, _) => Some(match now {
+            Some(Value::Number(_)) => Measure::One(*kind),
+            _ => Measure::Table,
+        }),
+        Expect::OneOf(choices) => choices.iter().find_map(|choice| measure_of(choice, now)),
+        _ => None,
+    }
+}

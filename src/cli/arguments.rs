@@ -1,0 +1,184 @@
+//! What was typed.
+
+use clap::{Args, Parser, Subcommand, ValueEnum};
+use soakdown::units::{read_temperature, read_time};
+use std::path::PathBuf;
+
+const ABOUT: &str = "Plans how long a rocket engine may burn, and how long people must wait afterwards";
+
+const AFTER_HELP: &str = "\
+Exit status:
+  0    computed
+  1    failed: a file can't be written, the solver gave up
+  2    wrong usage, or a case or log that can't be read or accepted
+  3    computed, and with --strict something is amiss: a verdict other than within-limits
+  130  interrupted
+
+Heat, pressure and fire hurt people. Local codes, the site's safety plan and licensed engineers come before anything printed here.";
+
+const CHECK_HELP: &str = "\
+Examples:
+  soakdown check examples/heat-sink-chamber.toml
+  soakdown check chamber.toml --wall \"800 K\" --set surroundings.air=\"40 degC\"";
+
+const RUN_HELP: &str = "\
+Examples:
+  soakdown run examples/heat-sink-chamber.toml
+  soakdown run chamber.toml --set profile.phases.0.burn=\"3 s\" --strict
+  soakdown run chamber.toml --out results --times \"1 s, 2 s, 10 s\"
+
+Exit status: 0 computed, 1 failed, 2 wrong usage or case not accepted, 3 with --strict and a verdict
+other than within-limits, 130 interrupted.";
+
+/// The command line.
+#[derive(Debug, Parser)]
+#[command(name = "soakdown", version, about = ABOUT, after_help = AFTER_HELP, max_term_width = 100)]
+pub struct Arguments {
+    /// What to do.
+    #[command(subcommand)]
+    pub command: Command,
+}
+
+/// The commands.
+#[derive(Debug, Subcommand)]
+pub enum Command {
+    /// Is the case sound? Every input with where it comes from, the grid, the phases, what heats the wall now
+    #[command(after_help = CHECK_HELP)]
+    Check(CheckArguments),
+    /// What happens: peaks, margins, soak-back, approach to steady state, waits, energy balance
+    #[command(after_help = RUN_HELP)]
+    Run(RunArguments),
+}
+
+/// `soakdown check`.
+#[derive(Debug, Args)]
+pub struct CheckArguments {
+    /// The case file
+    pub case: PathBuf,
+    /// Wall temperature at which the heating is shown, with its unit, as in "800 K" [default: the start temperature]
+    #[arg(long, value_name = "TEMPERATURE", value_parser = wall)]
+    pub wall: Option<Quantity>,
+    /// What every answering command takes.
+    #[command(flatten)]
+    pub common: Common,
+}
+
+/// `soakdown run`.
+#[derive(Debug, Args)]
+pub struct RunArguments {
+    /// The case file
+    pub case: PathBuf,
+    /// Rows of trace.csv and profiles of depths.csv at exactly these times, as in "1 s, 2 s, 10 s"; needs --out
+    #[arg(long, value_name = "TIMES", value_delimiter = ',', value_parser = clock)]
+    pub times: Vec<Quantity>,
+    /// What every answering command takes.
+    #[command(flatten)]
+    pub common: Common,
+}
+
+/// Options of every answering command.
+#[derive(Debug, Args)]
+pub struct Common {
+    /// Print one JSON document on standard output, and nothing else there
+    #[arg(long)]
+    pub json: bool,
+    /// Write the documents into this folder, which is made if need be
+    #[arg(long, value_name = "DIR")]
+    pub out: Option<PathBuf>,
+    /// Units on the screen; files stay in SI
+    #[arg(long, value_name = "UNITS", value_enum, default_value_t = UnitsChoice::Si)]
+    pub units: UnitsChoice,
+    /// Put another value on an input (repeatable, the later one wins), as in profile.phases.0.burn="3 s"
+    #[arg(long, value_name = "PATH=VALUE")]
+    pub set: Vec<String>,
+    /// No summary and no warnings on the screen; mistakes are still told
+    #[arg(long)]
+    pub quiet: bool,
+    /// Colour on the screen
+    #[arg(long, value_name = "WHEN", value_enum, default_value_t = ColorChoice::Auto)]
+    pub color: ColorChoice,
+    /// Exit with status 3 when the verdict is anything but within-limits
+    #[arg(long)]
+    pub strict: bool,
+}
+
+/// Units on the screen.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum UnitsChoice {
+    /// °C, mm
+    Si,
+    /// °F, in
+    Us,
+}
+
+/// When to colour.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum ColorChoice {
+    /// On a terminal that can show it
+    Auto,
+    /// Always
+    Always,
+    /// Never
+    Never,
+}
+
+/// A quantity as typed, and its SI value.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Quantity {
+    /// As typed.
+    pub text: String,
+    /// In SI.
+    pub value: f64,
+}
+
+fn wall(text: &str) -> Result<Quantity, String> {
+    let temperature = read_temperature(text.trim()).map_err(|error| error.to_string())?;
+    if temperature.value > 0.0 {
+        Ok(Quantity {
+            text: text.trim().to_owned(),
+            value: temperature.value,
+        })
+    } else {
+        Err("a temperature lies above absolute zero".to_owned())
+    }
+}
+
+fn clock(text: &str) -> Result<Quantity, String> {
+    let time = read_time(text.trim()).map_err(|error| error.to_string())?;
+    if time.value >= 0.0 {
+        Ok(Quantity {
+            text: text.trim().to_owned(),
+            value: time.value,
+        })
+    } else {
+        Err("times count from the start of the profile: 0 s or later".to_owned())
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use clap::CommandFactory;
+
+    #[test]
+    fn the_command_line_is_well_formed() {
+        Arguments::command().debug_assert();
+    }
+
+    #[test]
+    fn times_are_read_with_their_units() {
+        let arguments = Arguments::try_parse_from(["soakdown", "run", "a.toml", "--times", "1 s, 2 min"]).expect("arguments");
+        let Command::Run(run) = arguments.command else {
+            panic!("another command")
+        };
+        assert_eq!(run.times.iter().map(|time| time.value).collect::<Vec<_>>(), [1.0, 120.0]);
+    }
+
+    #[test]
+    fn a_bare_or_negative_time_is_refused() {
+        for times in ["1", "1 s, -2 s", "1 K", ""] {
+            let parsed = Arguments::try_parse_from(["soakdown", "run", "a.toml", &format!("--times={times}")]);
+            assert!(parsed.is_err(), "{times}");
+        }
+    }
+}

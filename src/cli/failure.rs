@@ -1,0 +1,50 @@
+//! Why there is no answer, and whose fault that is.
+
+use super::exit::ExitStatus;
+use soakdown::diagnostics::Diagnostics;
+use soakdown::report::ReportError;
+use soakdown::run::RunError;
+use std::io;
+use std::path::PathBuf;
+
+/// Why a command ended without its answer, or without its files.
+#[derive(Debug, thiserror::Error)]
+pub enum Failure {
+    /// The case was not accepted.
+    #[error("the case was not accepted")]
+    Refused(Diagnostics),
+    /// The run ended early.
+    #[error(transparent)]
+    Run(#[from] RunError),
+    /// Ctrl-C can't be listened for.
+    #[error("Ctrl-C can't be listened for: {0}")]
+    Interrupt(#[from] ctrlc::Error),
+    /// A document can't be put together.
+    #[error(transparent)]
+    Report(#[from] ReportError),
+    /// A document can't be put together.
+    #[error("the document can't be written as JSON: {0}")]
+    Json(#[from] serde_json::Error),
+    /// The answer can't be printed.
+    #[error("the answer can't be printed: {0}")]
+    Print(#[source] io::Error),
+    /// A file can't be written.
+    #[error("{} was not written: {source}", path.display())]
+    Write {
+        /// The file or folder.
+        path: PathBuf,
+        /// Why.
+        source: io::Error,
+    },
+}
+
+impl Failure {
+    /// The exit status that says whose fault it was.
+    pub fn status(&self) -> ExitStatus {
+        match self {
+            Self::Refused(_) => ExitStatus::Refused,
+            Self::Run(RunError::Interrupted) => ExitStatus::Interrupted,
+            Self::Run(_) | Self::Interrupt(_) | Self::Report(_) | Self::Json(_) | Self::Print(_) | Self::Write { .. } => ExitStatus::Failed,
+        }
+    }
+}

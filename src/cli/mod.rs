@@ -1,0 +1,16 @@
+//! The command line: arguments, exit statuses, progress, wiring. No arithmetic, no wording of answers.
+
+mod arguments;
+mod check;
+mod command_line;
+mod exit;
+mod failure;
+mod files;
+mod interrupt;
+mod mistakes;
+mod printer;
+mod progress;
+mod run;
+mod start;
+
+pub use start::start;

@@ -1,0 +1,74 @@
+//! From the words of the command line to a command, and from its end to an exit status.
+
+use super::arguments::{Arguments, Command, Common, UnitsChoice};
+use super::check::check;
+use super::exit::ExitStatus;
+use super::failure::Failure;
+use super::mistakes::{plain_error, rendered};
+use super::printer::Printer;
+use super::run::run;
+use clap::Parser;
+use clap::error::ErrorKind;
+use serde::Serialize;
+use soakdown::report::Units;
+use std::ffi::OsString;
+
+/// Runs the program.
+pub fn start(words: impl Iterator<Item = OsString>) -> ExitStatus {
+    let arguments = match Arguments::try_parse_from(words) {
+        Ok(arguments) => arguments,
+        Err(told) => return usage(&told),
+    };
+    let common = match &arguments.command {
+        Command::Check(check) => &check.common,
+        Command::Run(run) => &run.common,
+    };
+    let printer = Printer::new(common.color, common.quiet);
+    let result = match &arguments.command {
+        Command::Check(arguments) => check(arguments, printer),
+        Command::Run(arguments) => run(arguments, printer),
+    };
+    result.unwrap_or_else(|failure| {
+        printer.mistake(&match &failure {
+            Failure::Refused(diagnostics) => refusal(diagnostics),
+            other => plain_error(&other.to_string()),
+        });
+        failure.status()
+    })
+}
+
+/// Help and version are answers; anything else was not understood.
+fn usage(told: &clap::Error) -> ExitStatus {
+    // If the terminal is gone, the exit status still says it.
+    let _unheard = told.print();
+    match told.kind() {
+        ErrorKind::DisplayHelp | ErrorKind::DisplayVersion => ExitStatus::Computed,
+        _ => ExitStatus::Refused,
+    }
+}
+
+fn refusal(diagnostics: &soakdown::diagnostics::Diagnostics) -> String {
+    let errors = diagnostics
+        .list
+        .iter()
+        .filter(|diagnostic| diagnostic.severity == soakdown::diagnostics::Severity::Error)
+        .count();
+    let count = match errors {
+        1 => "1 mistake".to_owned(),
+        _ => format!("{errors} mistakes"),
+    };
+    format!("{}\n\n{}", rendered(diagnostics), plain_error(&format!("{count}; nothing was computed")))
+}
+
+/// A document as text, with its line ended.
+pub fn json_text(document: &impl Serialize) -> Result<String, Failure> {
+    Ok(serde_json::to_string_pretty(document)? + "\n")
+}
+
+/// Units of the screen.
+pub fn units(common: &Common) -> Units {
+    match common.units {
+        UnitsChoice::Si => Units::Si,
+        UnitsChoice::Us => Units::Us,
+    }
+}

@@ -1,0 +1,29 @@
+//! Answers into documents: JSON, CSV and the terminal's pages. The one place where an answer becomes a word or a rounded number.
+//!
+//! JSON and CSV carry full precision in SI; pages are rounded to the safe side and carry styles as escape codes, which a plain stream strips.
+
+mod cautions;
+mod check;
+mod check_page;
+mod csv_files;
+mod figures;
+mod findings;
+mod page;
+mod places;
+mod profile_text;
+mod result;
+mod run_page;
+#[cfg(test)]
+mod sample;
+
+pub use cautions::{Caution, cautions_of_case, cautions_of_run};
+pub use check::CheckDocument;
+pub use check_page::check_page;
+pub use csv_files::{ReportError, depths_csv, trace_csv};
+pub use figures::Units;
+pub use findings::warnings_of_run;
+pub use result::ResultDocument;
+pub use run_page::run_page;
+
+/// The name and version that every document carries.
+pub const PROGRAM: &str = concat!("soakdown ", env!("CARGO_PKG_VERSION"));

@@ -1,0 +1,599 @@
+//! `soakdown-result/1`: the answers of one run as JSON, field for field.
+
+use super::PROGRAM;
+use super::cautions::cautions_of_run;
+use super::figures::Units;
+use super::findings::warnings_of_run;
+use crate::answers::{
+    EvenedOut, JointAnswer, LayerAnswer, LimitAnswer, PlaceAnswer, ProbeAnswer, RunAnswers, StationAnswers, Steady, Verdict, WaitAnswer, WaitState,
+};
+use crate::case::{Case, CaseFile};
+use crate::diagnostics::Notice;
+use crate::model::{LimitKind, LimitOrigin};
+use serde::Serialize;
+
+/// `result.json`.
+#[derive(Debug, Serialize)]
+pub struct ResultDocument<'a> {
+    format: &'static str,
+    program: &'static str,
+    command: &'a str,
+    case: &'a str,
+    case_digest: &'a str,
+    files: Vec<FileRow<'a>>,
+    title: &'a str,
+    verdict: &'static str,
+    worst: Option<WorstRow<'a>>,
+    without_limit: &'a [String],
+    last_burn_end_s: Option<f64>,
+    computed_until_s: f64,
+    stations: Vec<StationRow<'a>>,
+    warnings: Vec<WarningRow>,
+    cautions: Vec<CautionRow>,
+}
+
+impl<'a> ResultDocument<'a> {
+    /// The document of one run; `command` as it would be typed again.
+    pub fn new(case: &'a Case, command: &'a str, answers: &'a RunAnswers) -> Self {
+        let found = warnings_of_run(answers, Units::Si);
+        Self {
+            format: "soakdown-result/1",
+            program: PROGRAM,
+            command,
+            case: &case.path,
+            case_digest: &case.digest,
+            files: file_rows(&case.files),
+            title: case.model.title(),
+            verdict: verdict_word(answers.verdict),
+            worst: answers.worst.as_ref().map(|worst| WorstRow {
+                station: &worst.station,
+                place: &worst.place,
+                margin: worst.margin,
+            }),
+            without_limit: &answers.without_limit,
+            last_burn_end_s: answers.last_burn_end,
+            computed_until_s: answers.computed_until,
+            stations: answers.stations.iter().map(StationRow::new).collect(),
+            warnings: warning_rows(case.notices.iter().cloned().chain(found)),
+            cautions: cautions_of_run(&case.model, answers, Units::Si)
+                .into_iter()
+                .map(|caution| CautionRow {
+                    code: caution.code,
+                    text: caution.text,
+                })
+                .collect(),
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+pub(super) struct FileRow<'a> {
+    path: &'a str,
+    digest: &'a str,
+}
+
+pub(super) fn file_rows(files: &[CaseFile]) -> Vec<FileRow<'_>> {
+    files
+        .iter()
+        .map(|file| FileRow {
+            path: &file.path,
+            digest: &file.digest,
+        })
+        .collect()
+}
+
+#[derive(Debug, Serialize)]
+pub(super) struct WarningRow {
+    code: &'static str,
+    text: String,
+    station: Option<String>,
+    #[serde(rename = "where")]
+    place: Option<String>,
+}
+
+pub(super) fn warning_rows(notices: impl Iterator<Item = Notice>) -> Vec<WarningRow> {
+    notices
+        .map(|notice| WarningRow {
+            code: notice.code,
+            text: notice.text,
+            station: notice.station,
+            place: notice.place,
+        })
+        .collect()
+}
+
+#[derive(Debug, Serialize)]
+pub(super) struct CautionRow {
+    pub(super) code: &'static str,
+    pub(super) text: String,
+}
+
+#[derive(Debug, Serialize)]
+struct WorstRow<'a> {
+    station: &'a str,
+    #[serde(rename = "where")]
+    place: &'a str,
+    #[serde(rename = "margin_K")]
+    margin: f64,
+}
+
+#[derive(Debug, Serialize)]
+struct StationRow<'a> {
+    name: &'a str,
+    mass_kg_per_m2: f64,
+    thickness_m: f64,
+    layers: Vec<LayerRow<'a>>,
+    joints: Vec<JointRow<'a>>,
+    hot_face: PlaceRow,
+    outer_face: PlaceRow,
+    probes: Vec<ProbeRow<'a>>,
+    soak_back: SoakBackRow,
+    /// Differences against a log; none yet.
+    log: Option<()>,
+    evened_out_s: Option<f64>,
+    evened_out_state: &'static str,
+    steady: SteadyRow,
+    waits: Vec<WaitRow<'a>>,
+    energy: EnergyRow,
+    numerical: NumericalRow,
+}
+
+impl<'a> StationRow<'a> {
+    fn new(station: &'a StationAnswers) -> Self {
+        let (evened_out_s, evened_out_state) = match station.evened_out {
+            EvenedOut::From(clock) => (Some(clock), "evens-out"),
+            EvenedOut::Never => (None, "never"),
+            EvenedOut::Beyond => (None, "beyond-100-h"),
+        };
+        Self {
+            name: &station.name,
+            mass_kg_per_m2: station.mass,
+            thickness_m: station.thickness,
+            layers: station.layers.iter().map(LayerRow::new).collect(),
+            joints: station.joints.iter().map(JointRow::new).collect(),
+            hot_face: PlaceRow::new(&station.hot_face),
+            outer_face: PlaceRow::new(&station.outer_face),
+            probes: station.probes.iter().map(ProbeRow::new).collect(),
+            soak_back: SoakBackRow {
+                outer_face_rise: station.soak_back.outer_face_rise,
+                outer_face_peak_s: station.soak_back.outer_face_peak,
+                last_peak_s: station.soak_back.last_peak.map(|(time, _)| time),
+                last_peak_depth_m: station.soak_back.last_peak.map(|(_, depth)| depth),
+            },
+            log: None,
+            evened_out_s,
+            evened_out_state,
+            steady: SteadyRow::new(&station.steady),
+            waits: station.waits.iter().map(WaitRow::new).collect(),
+            energy: EnergyRow {
+                in_: station.energy.inward,
+                gross_in: station.energy.gross_inward,
+                out: station.energy.outward,
+                gross_out: station.energy.gross_outward,
+                stored: station.energy.stored,
+                imbalance: station.energy.imbalance,
+            },
+            numerical: NumericalRow {
+                nodes: station.numerical.nodes,
+                steps: station.numerical.steps,
+                estimated_error: station.numerical.estimated_error,
+            },
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+struct PlaceRow {
+    #[serde(rename = "peak_K")]
+    peak: f64,
+    peak_s: f64,
+    peak_phase: &'static str,
+    peak_depth_m: f64,
+    #[serde(rename = "limit_K")]
+    limit: Option<f64>,
+    limit_kind: Option<&'static str>,
+    limit_from: Option<&'static str>,
+    #[serde(rename = "allowance_K")]
+    allowance: Option<f64>,
+    #[serde(rename = "margin_K")]
+    margin: Option<f64>,
+    first_over_s: Option<f64>,
+    time_over_limit_s: Option<f64>,
+    allowed_over_s: Option<f64>,
+    kept: Option<bool>,
+}
+
+impl PlaceRow {
+    fn new(at: &PlaceAnswer) -> Self {
+        let limit: Option<&LimitAnswer> = at.limit.as_ref();
+        Self {
+            peak: at.peak,
+            peak_s: at.peak_time,
+            peak_phase: at.peak_phase.word(),
+            peak_depth_m: at.peak_depth,
+            limit: limit.map(|limit| limit.limit),
+            limit_kind: limit.map(|limit| limit_kind_word(limit.kind)),
+            limit_from: limit.map(|limit| limit_origin_word(limit.origin)),
+            allowance: limit.map(|limit| limit.allowance),
+            margin: limit.map(|limit| limit.margin),
+            first_over_s: limit.and_then(|limit| limit.first_over),
+            time_over_limit_s: limit.map(|limit| limit.time_over),
+            allowed_over_s: limit.map(|limit| limit.allowed_over),
+            kept: limit.map(|limit| limit.kept),
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+struct LayerRow<'a> {
+    name: &'a str,
+    material: &'a str,
+    #[serde(flatten)]
+    at: PlaceRow,
+}
+
+impl<'a> LayerRow<'a> {
+    fn new(layer: &'a LayerAnswer) -> Self {
+        Self {
+            name: &layer.name,
+            material: &layer.material,
+            at: PlaceRow::new(&layer.at),
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+struct JointRow<'a> {
+    between: [&'a str; 2],
+    #[serde(flatten)]
+    at: PlaceRow,
+}
+
+impl<'a> JointRow<'a> {
+    fn new(joint: &'a JointAnswer) -> Self {
+        Self {
+            between: [&joint.between[0], &joint.between[1]],
+            at: PlaceRow::new(&joint.at),
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+struct ProbeRow<'a> {
+    name: &'a str,
+    depth_m: f64,
+    #[serde(rename = "peak_K")]
+    peak: f64,
+    peak_s: f64,
+    #[serde(rename = "peak_true_K")]
+    peak_true: f64,
+}
+
+impl<'a> ProbeRow<'a> {
+    fn new(probe: &'a ProbeAnswer) -> Self {
+        Self {
+            name: &probe.name,
+            depth_m: probe.depth,
+            peak: probe.peak,
+            peak_s: probe.peak_time,
+            peak_true: probe.peak_true,
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+struct SoakBackRow {
+    #[serde(rename = "outer_face_rise_K")]
+    outer_face_rise: f64,
+    outer_face_peak_s: f64,
+    last_peak_s: Option<f64>,
+    last_peak_depth_m: Option<f64>,
+}
+
+#[derive(Debug, Default, Serialize)]
+struct SteadyRow {
+    exists: bool,
+    #[serde(rename = "hot_face_K")]
+    hot_face: Option<f64>,
+    #[serde(rename = "outer_face_K")]
+    outer_face: Option<f64>,
+    hot_face_reached: Option<f64>,
+    outer_face_reached: Option<f64>,
+    time_to_95_percent_s: Option<f64>,
+    within_limits: Option<bool>,
+}
+
+impl SteadyRow {
+    fn new(steady: &Steady) -> Self {
+        match steady {
+            Steady::None => Self::default(),
+            Steady::At(state) => Self {
+                exists: true,
+                hot_face: Some(state.hot_face),
+                outer_face: Some(state.outer_face),
+                hot_face_reached: state.hot_face_reached,
+                outer_face_reached: state.outer_face_reached,
+                time_to_95_percent_s: state.time_to_95_percent,
+                within_limits: Some(state.within_limits),
+            },
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+struct WaitRow<'a> {
+    name: &'a str,
+    #[serde(rename = "where")]
+    place: &'a str,
+    #[serde(rename = "below_K")]
+    below: f64,
+    state: &'static str,
+    wait_s: Option<f64>,
+    clock_s: Option<f64>,
+    #[serde(rename = "slope_s_per_K")]
+    slope: Option<f64>,
+}
+
+impl<'a> WaitRow<'a> {
+    fn new(wait: &'a WaitAnswer) -> Self {
+        let (state, wait_s, clock_s, slope) = match wait.state {
+            WaitState::Cools { wait, clock, slope } => ("cools", Some(wait), Some(clock), Some(slope)),
+            WaitState::StaysBelow { clock } => ("stays-below", Some(0.0), Some(clock), None),
+            WaitState::Never => ("never", None, None, None),
+            WaitState::Beyond => ("beyond-100-h", None, None, None),
+        };
+        Self {
+            name: &wait.name,
+            place: &wait.place,
+            below: wait.below,
+            state,
+            wait_s,
+            clock_s,
+            slope,
+        }
+    }
+}
+
+#[derive(Debug, Serialize)]
+struct EnergyRow {
+    #[serde(rename = "in_J_per_m2")]
+    in_: f64,
+    #[serde(rename = "gross_in_J_per_m2")]
+    gross_in: f64,
+    #[serde(rename = "out_J_per_m2")]
+    out: f64,
+    #[serde(rename = "gross_out_J_per_m2")]
+    gross_out: f64,
+    #[serde(rename = "stored_J_per_m2")]
+    stored: f64,
+    imbalance: f64,
+}
+
+#[derive(Debug, Serialize)]
+struct NumericalRow {
+    nodes: usize,
+    steps: usize,
+    #[serde(rename = "estimated_error_K")]
+    estimated_error: f64,
+}
+
+fn verdict_word(verdict: Verdict) -> &'static str {
+    match verdict {
+        Verdict::OutsideModel => "outside-model",
+        Verdict::OverLimit => "over-limit",
+        Verdict::InsideAllowance => "inside-allowance",
+        Verdict::NoLimits => "no-limits",
+        Verdict::WithinLimits => "within-limits",
+    }
+}
+
+/// The word of the case file for what a limit protects.
+pub(super) fn limit_kind_word(kind: LimitKind) -> &'static str {
+    match kind {
+        LimitKind::Service => "service",
+        LimitKind::Strength => "strength",
+        LimitKind::Melting => "melting",
+        LimitKind::Bond => "bond",
+        LimitKind::Seal => "seal",
+        LimitKind::Propellant => "propellant",
+    }
+}
+
+/// Whose limit it is.
+pub(super) fn limit_origin_word(origin: LimitOrigin) -> &'static str {
+    match origin {
+        LimitOrigin::Case => "case",
+        LimitOrigin::Library => "library",
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::report::sample;
+    use serde_json::Value;
+
+    fn keys(value: &Value) -> Vec<&str> {
+        value.as_object().expect("an object").keys().map(String::as_str).collect()
+    }
+
+    const PLACE: [&str; 13] = [
+        "peak_K",
+        "peak_s",
+        "peak_phase",
+        "peak_depth_m",
+        "limit_K",
+        "limit_kind",
+        "limit_from",
+        "allowance_K",
+        "margin_K",
+        "first_over_s",
+        "time_over_limit_s",
+        "allowed_over_s",
+        "kept",
+    ];
+
+    fn sorted<'a>(names: impl IntoIterator<Item = &'a str>) -> Vec<&'a str> {
+        let mut names: Vec<&str> = names.into_iter().collect();
+        names.sort_unstable();
+        names
+    }
+
+    /// Against the list of keys in RESULTS.md, typed here anew.
+    #[test]
+    fn every_key_of_the_contract_is_there_and_no_other() {
+        let case = sample::case();
+        let answers = sample::answers();
+        let document = serde_json::to_value(ResultDocument::new(&case, "soakdown run chamber.toml", &answers)).expect("a value");
+        let expect = |value: &Value, names: &[&str]| assert_eq!(sorted(keys(value)), sorted(names.iter().copied()));
+        expect(
+            &document,
+            &[
+                "format",
+                "program",
+                "command",
+                "case",
+                "case_digest",
+                "files",
+                "title",
+                "verdict",
+                "worst",
+                "without_limit",
+                "last_burn_end_s",
+                "computed_until_s",
+                "stations",
+                "warnings",
+                "cautions",
+            ],
+        );
+        expect(&document["files"][0], &["path", "digest"]);
+        expect(&document["worst"], &["station", "where", "margin_K"]);
+        let station = &document["stations"][0];
+        expect(
+            station,
+            &[
+                "name",
+                "mass_kg_per_m2",
+                "thickness_m",
+                "layers",
+                "joints",
+                "hot_face",
+                "outer_face",
+                "probes",
+                "soak_back",
+                "log",
+                "evened_out_s",
+                "evened_out_state",
+                "steady",
+                "waits",
+                "energy",
+                "numerical",
+            ],
+        );
+        let with = |first: &[&'static str]| first.iter().chain(&PLACE).copied().collect::<Vec<_>>();
+        expect(&station["layers"][0], &with(&["name", "material"]));
+        expect(&station["joints"][0], &with(&["between"]));
+        expect(&station["hot_face"], &PLACE);
+        expect(&station["outer_face"], &PLACE);
+        expect(&station["probes"][0], &["name", "depth_m", "peak_K", "peak_s", "peak_true_K"]);
+        expect(
+            &station["soak_back"],
+            &["outer_face_rise_K", "outer_face_peak_s", "last_peak_s", "last_peak_depth_m"],
+        );
+        expect(
+            &station["steady"],
+            &[
+                "exists",
+                "hot_face_K",
+                "outer_face_K",
+                "hot_face_reached",
+                "outer_face_reached",
+                "time_to_95_percent_s",
+                "within_limits",
+            ],
+        );
+        expect(
+            &station["waits"][0],
+            &["name", "where", "below_K", "state", "wait_s", "clock_s", "slope_s_per_K"],
+        );
+        expect(
+            &station["energy"],
+            &[
+                "in_J_per_m2",
+                "gross_in_J_per_m2",
+                "out_J_per_m2",
+                "gross_out_J_per_m2",
+                "stored_J_per_m2",
+                "imbalance",
+            ],
+        );
+        expect(&station["numerical"], &["nodes", "steps", "estimated_error_K"]);
+        expect(&document["warnings"][0], &["code", "text", "station", "where"]);
+        expect(&document["cautions"][0], &["code", "text"]);
+    }
+
+    #[test]
+    fn keys_stand_in_the_order_of_the_contract() {
+        let case = sample::case();
+        let answers = sample::answers();
+        let text = serde_json::to_string(&ResultDocument::new(&case, "c", &answers)).expect("text");
+        let order = [
+            "\"format\"",
+            "\"program\"",
+            "\"command\"",
+            "\"case\"",
+            "\"case_digest\"",
+            "\"files\"",
+            "\"title\"",
+            "\"verdict\"",
+            "\"worst\"",
+            "\"without_limit\"",
+            "\"last_burn_end_s\"",
+            "\"computed_until_s\"",
+            "\"stations\"",
+            "\"peak_K\"",
+            "\"peak_s\"",
+            "\"joints\"",
+            "\"probes\"",
+            "\"soak_back\"",
+            "\"log\":null",
+            "\"evened_out_s\"",
+            "\"steady\"",
+            "\"waits\"",
+            "\"energy\"",
+            "\"numerical\"",
+            "\"warnings\"",
+            "\"cautions\"",
+        ];
+        let places: Vec<usize> = order.iter().map(|key| text.find(key).unwrap_or_else(|| panic!("no {key}"))).collect();
+        assert!(places.is_sorted(), "{places:?}");
+    }
+
+    #[test]
+    fn states_and_what_does_not_exist() {
+        let case = sample::case();
+        let mut answers = sample::answers();
+        answers.worst = None;
+        answers.last_burn_end = None;
+        let station = &mut answers.stations[0];
+        station.steady = Steady::None;
+        station.evened_out = EvenedOut::Beyond;
+        station.waits[0].state = WaitState::Never;
+        let below = WaitState::StaysBelow { clock: 2.0 };
+        station.waits[1].state = below;
+        let document = serde_json::to_value(ResultDocument::new(&case, "c", &answers)).expect("a value");
+        assert_eq!(document["worst"], Value::Null);
+        assert_eq!(document["last_burn_end_s"], Value::Null);
+        let station = &document["stations"][0];
+        assert_eq!(station["steady"]["exists"], false);
+        assert_eq!(station["steady"]["within_limits"], Value::Null);
+        assert_eq!(station["evened_out_state"], "beyond-100-h");
+        assert_eq!(station["evened_out_s"], Value::Null);
+        assert_eq!(station["waits"][0]["state"], "never");
+        assert_eq!(station["waits"][0]["wait_s"], Value::Null);
+        assert_eq!(station["waits"][1]["state"], "stays-below");
+        assert_eq!(station["waits"][1]["wait_s"], 0.0);
+        assert_eq!(station["hot_face"]["limit_K"], Value::Null);
+        assert_eq!(station["hot_face"]["kept"], Value::Null);
+    }
+}
