@@ -302,7 +302,11 @@ impl Case {
         }
         let (answers, trace) = history(&self.model, &times)?;
         let station = &answers.stations[0];
-        let row = |time: f64| trace.iter().find(|row| row.time == time).ok_or(format!("{name}: no row at {time} s"));
+        // Clocks of rows are read off the steps: equal to the asked ones but for rounding.
+        let row = |time: f64| {
+            let same = |row: &&TraceRow| (row.time - time).abs() <= 1e-12 * time;
+            trace.iter().find(same).ok_or(format!("{name}: no row at {time} s"))
+        };
         let mut found = Vec::new();
         for expected in &self.expected {
             let (value, in_kelvin) = match expected.what {

@@ -328,9 +328,11 @@ fn a_line_of_temperatures_evens_out_as_the_series_says() -> Outcome {
         map.depths.iter().map(|depth| 400.0 + 600.0 * depth / thickness).collect()
     })?;
     for (row, expected) in rows.iter().zip(FROM_A_LINE) {
+        // Rows sooner than a twentieth of the phase are promised to 1 % of the jump.
+        let within = if expected[0] < 0.05 { 0.01 * 300.0 } else { PROMISE };
         let found = [row.faces[0], row.probes[0].1, row.probes[1].1, row.probes[2].1, row.faces[1]];
         for (found, expected) in found.iter().zip(&expected[1..]) {
-            assert!((found - expected).abs() < PROMISE, "at {} s {found}, not {expected}", row.clock);
+            assert!((found - expected).abs() < within, "at {} s {found}, not {expected}", row.clock);
         }
     }
     Ok(())

@@ -21,7 +21,7 @@ fn radiation_grows_until_losses_equal_the_input_and_the_temperature_stands_still
         assert!(pair[1].flux_out >= pair[0].flux_out - 1e-6 * flux, "losses fall while heating: {pair:?}");
         assert!(pair[1].faces[1] >= pair[0].faces[1] - 1e-4, "the shell cools while heating: {pair:?}");
     }
-    assert!(trace[0].flux_out < 0.5 * flux, "not a start-up: {:?}", trace[0]);
+    assert!(trace[0].flux_out < 0.8 * flux, "not a start-up: {:?}", trace[0]);
     let [before, last] = [&trace[38], &trace[39]];
     assert!((last.flux_out / flux - 1.0).abs() < 1e-6, "{last:?}");
     assert!((last.faces[1] - before.faces[1]).abs() < 1e-3);
@@ -60,7 +60,7 @@ fn after_shutdown_the_hotter_part_feeds_the_cooler_one_until_both_are_level_then
     };
     let (wait, _) = cooled(&station.waits[0])?;
     assert!(level > 10.0 && level < 0.5 * wait, "level at {level} s, cool after {wait} s");
-    let times: Vec<f64> = (0..=60).map(|row| 6.0 + (wait - 6.0) * (f64::from(row) / 60.0).powi(3)).collect();
+    let times: Vec<f64> = (0..=90).map(|row| 6.0 + (wait - 6.0) * (f64::from(row) / 90.0).powi(4)).collect();
     let (_, trace) = history(&model, &times)?;
     let mut fed = 0;
     for pair in trace.windows(2) {
@@ -68,7 +68,7 @@ fn after_shutdown_the_hotter_part_feeds_the_cooler_one_until_both_are_level_then
         let gap = pair[0].faces[0] - pair[0].faces[3];
         assert!(gap > 0.0 && pair[1].faces[0] > pair[1].faces[3], "heat flows from hot to cold: {pair:?}");
         assert!(liner < 0.0, "the hotter part only cools: {pair:?}");
-        if pair[1].time < 0.1 * level {
+        if pair[1].time < station.soak_back.outer_face_peak {
             fed += 1;
             assert!(jacket > 0.0, "the cooler part is fed: {pair:?}");
         }

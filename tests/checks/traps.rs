@@ -42,6 +42,7 @@ fn lump_with_limit(limit: Option<Limit>, allowance: Allowance) -> Result<RunAnsw
         heating: absorbed(LUMP_FLUX)?,
         outer: outside(LUMP_LOSS, 0.0)?,
         phases: vec![burn(LUMP_BURN)?],
+        waits: vec![(Place::OuterFace, 320.0)],
         allowance,
         ..Wall::of(vec![lump("body", LUMP_CAPACITY)?.with_limit(limit)])?
     };
@@ -56,6 +57,14 @@ const LUMP_CAPACITY: f64 = 8000.0;
 /// Its peak: T₀ + q/h (1 − exp(−h t/C)).
 fn lump_peak(flux: f64) -> f64 {
     300.0 - flux / LUMP_LOSS * (-LUMP_LOSS * LUMP_BURN / LUMP_CAPACITY).exp_m1()
+}
+
+/// COMPUTED: when it passes a temperature and for how long in all, from the exponentials of heating and of cooling.
+fn lump_time_over(passed: f64) -> (f64, f64) {
+    let rate = LUMP_LOSS / LUMP_CAPACITY;
+    let up = -(1.0 - (passed - 300.0) * LUMP_LOSS / LUMP_FLUX).ln() / rate;
+    let down = LUMP_BURN + ((lump_peak(LUMP_FLUX) - 300.0) / (passed - 300.0)).ln() / rate;
+    (up, down - up)
 }
 
 #[test]
@@ -270,12 +279,8 @@ fn a_place_that_never_gets_there_stays_below() -> Outcome {
 
 #[test]
 fn a_limit_may_be_passed_for_a_stated_time_in_all() -> Outcome {
-    // COMPUTED: the time above 400 K, from the exponentials of heating and of cooling.
     let passed = 400.0;
-    let rate = LUMP_LOSS / LUMP_CAPACITY;
-    let up = -(1.0 - (passed - 300.0) * LUMP_LOSS / LUMP_FLUX).ln() / rate;
-    let down = LUMP_BURN + ((lump_peak(LUMP_FLUX) - 300.0) / (passed - 300.0)).ln() / rate;
-    let over = down - up;
+    let (up, over) = lump_time_over(passed);
     for (allowed, kept) in [(0.0, false), (0.99 * over, false), (1.01 * over, true)] {
         let answers = lump_with_limit(limit_for(passed, allowed)?, Allowance::none())?;
         let limit = limit_of(&answers.stations[0].layers[0].at)?;
@@ -288,6 +293,41 @@ fn a_limit_may_be_passed_for_a_stated_time_in_all() -> Outcome {
         assert!(limit.margin < 0.0, "{limit:?}");
         assert_eq!(answers.verdict, if kept { Verdict::WithinLimits } else { Verdict::OverLimit });
     }
+    Ok(())
+}
+
+#[test]
+#[ignore = "the run stops before the time above the limit is over: 31.2 s answered, 154.8 s true"]
+fn the_time_above_a_limit_is_counted_to_its_end_though_nobody_asks_for_a_wait() -> Outcome {
+    let model = Wall {
+        heating: absorbed(LUMP_FLUX)?,
+        outer: outside(LUMP_LOSS, 0.0)?,
+        phases: vec![burn(LUMP_BURN)?],
+        ..Wall::of(vec![lump("body", LUMP_CAPACITY)?.with_limit(limit_for(400.0, 100.0)?)])?
+    }
+    .model()?;
+    let answers = answered(&model)?;
+    let limit = limit_of(&answers.stations[0].layers[0].at)?;
+    let over = lump_time_over(400.0).1;
+    assert!((limit.time_over / over - 1.0).abs() < 1e-3, "{} s over, not {over} s", limit.time_over);
+    assert!(!limit.kept, "{limit:?}");
+    Ok(())
+}
+
+#[test]
+#[ignore = "the run stops while the limit is passed, and calls it kept"]
+fn a_limit_that_stays_passed_is_not_kept_by_any_allowed_time() -> Outcome {
+    // An insulated lump keeps its heat: 400 K + 50 K for ever.
+    let model = Wall {
+        heating: absorbed(LUMP_FLUX)?,
+        phases: vec![burn(LUMP_BURN)?],
+        ..Wall::of(vec![lump("body", LUMP_CAPACITY)?.with_limit(limit_for(400.0, 3600.0)?)])?
+    }
+    .model()?;
+    let answers = answered(&model)?;
+    let limit = limit_of(&answers.stations[0].layers[0].at)?;
+    assert!(!limit.kept, "{limit:?}");
+    assert_eq!(answers.verdict, Verdict::OverLimit);
     Ok(())
 }
 

@@ -3,9 +3,9 @@
 
 use crate::walls::*;
 use soakdown::model::*;
-use soakdown::run::{Course, Timeline};
+use soakdown::run::{Course, Recorder, Segment, Timeline};
 use soakdown::solve::Flow;
-use soakdown::wall::Grid;
+use soakdown::wall::{Forcing, Grid, Ramp};
 
 /// Temperatures of all nodes at a clock, and the steps to there.
 fn state(model: &Model, grid: &Grid, step_tolerance: f64, start: f64, time: f64) -> Result<(Vec<f64>, usize), Box<dyn std::error::Error>> {
@@ -91,24 +91,105 @@ fn order_two_in_the_grid_across_layers_and_a_contact() -> Outcome {
     grid_order(&model, 4.0, [723.1967987, 336.1553981])
 }
 
-/// Largest error of any node at the end against the mean step, on one grid.
-fn time_order(model: &Model, time: f64) -> Result<f64, Box<dyn std::error::Error>> {
+/// Temperatures of all nodes at equal parts of the time, by as many equal steps as asked: a stretch for each step, and a tolerance that accepts it.
+fn by_equal_steps(model: &Model, grid: &Grid, time: f64, steps: usize) -> Result<Vec<Vec<f64>>, Box<dyn std::error::Error>> {
+    let station = &model.stations()[0];
+    let whole = Timeline::of_profile(model, station, Some(time));
+    assert_eq!(whole.len(), 1, "one straight stretch");
+    let whole = &whole[0];
+    let part = |ramp: Ramp, step: usize| {
+        let [start, end] = [step, step + 1].map(|step| ramp.at(step as f64 / steps as f64));
+        Ramp { start, end }
+    };
+    let segments: Vec<Segment> = (0..steps)
+        .map(|step| Segment {
+            start: time * step as f64 / steps as f64,
+            jump: true,
+            forcing: Forcing {
+                length: time / steps as f64,
+                film: part(whole.forcing.film, step),
+                gas: part(whole.forcing.gas, step),
+                flux: part(whole.forcing.flux, step),
+                ..whole.forcing
+            },
+            ..whole.clone()
+        })
+        .collect();
+    let mut course = Course::new(station, model.surroundings(), grid, 300.0, 1e12);
+    let mut states = Vec::new();
+    course.drive(&segments, None, |moment| {
+        assert!(
+            moment.step.from == 0.0 && moment.step.to == 1.0,
+            "one step a stretch: {} {} {}",
+            moment.from,
+            moment.step.from,
+            moment.step.to
+        );
+        states.push((0..moment.map().len()).map(|node| moment.temperature(node, 1.0)).collect());
+        Flow::Continue
+    })?;
+    assert_eq!(course.steps(), steps);
+    Ok(states)
+}
+
+/// Largest error of any node from a quarter of the time on against the step, on one grid.
+fn order_by_equal_steps(model: &Model, time: f64) -> Outcome {
     let grid = Grid::new(model, &model.stations()[0], 1.0);
-    let (exact, most) = state(model, &grid, 1e-8, 300.0, time)?;
+    let most = 4096;
+    let exact = by_equal_steps(model, &grid, time, most)?;
     let mut errors = Vec::new();
-    for tolerance in [1e-1, 1e-2, 1e-3, 1e-4, 1e-5] {
-        let (temperatures, steps) = state(model, &grid, tolerance, 300.0, time)?;
-        let error = temperatures
-            .iter()
-            .zip(&exact)
-            .map(|(found, exact)| (found - exact).abs())
-            .fold(0.0, f64::max);
-        assert!(steps < most && error > 1e-9, "{steps} steps, {error} K");
+    for steps in [8, 16, 32, 64, 128, 256] {
+        let states = by_equal_steps(model, &grid, time, steps)?;
+        let mut largest: f64 = 0.0;
+        for step in steps / 4..=steps {
+            let (found, exact) = (&states[step - 1], &exact[step * (most / steps) - 1]);
+            largest = found
+                .iter()
+                .zip(exact)
+                .map(|(found, exact)| (found - exact).abs())
+                .fold(largest, f64::max);
+        }
+        errors.push((time / steps as f64, largest));
+    }
+    let order = slope(&errors);
+    assert!(order >= 3.5, "order {order} in time by equal steps: {errors:?}");
+    // And at no halving less than order 3.
+    assert!(errors.windows(2).all(|pair| pair[1].1 < pair[0].1 / 8.0), "{errors:?}");
+    Ok(())
+}
+
+/// Temperatures of all nodes at twenty clocks, by steps of a tolerance, and how many steps those were.
+fn by_tolerance(model: &Model, grid: &Grid, time: f64, step_tolerance: f64) -> Result<(Vec<Vec<(f64, f64)>>, usize), Box<dyn std::error::Error>> {
+    let station = &model.stations()[0];
+    let clocks = (1..=20).map(|clock| time * f64::from(clock) / 20.0).collect();
+    let mut course = Course::new(station, model.surroundings(), grid, 300.0, step_tolerance);
+    let mut recorder = Recorder::new(Vec::new(), false, clocks);
+    course.drive(&Timeline::of_profile(model, station, Some(time)), None, |moment| {
+        recorder.see(moment);
+        Flow::Continue
+    })?;
+    assert_eq!(recorder.profiles.len(), 20);
+    Ok((recorder.profiles.into_iter().map(|profile| profile.1).collect(), course.steps()))
+}
+
+/// Largest error of any node at any of twenty clocks (between the steps by dense output) against the mean step, on one grid.
+fn order_by_tolerance(model: &Model, time: f64) -> Outcome {
+    let grid = Grid::new(model, &model.stations()[0], 1.0);
+    let (exact, most) = by_tolerance(model, &grid, time, 1e-7)?;
+    let mut errors = Vec::new();
+    for tolerance in [0.3, 0.1, 0.03, 0.01, 0.003, 0.001, 0.0003, 0.0001] {
+        let (found, steps) = by_tolerance(model, &grid, time, tolerance)?;
+        let pairs = found.iter().flatten().zip(exact.iter().flatten());
+        let error = pairs.map(|(found, exact)| (found.1 - exact.1).abs()).fold(0.0, f64::max);
+        assert!(
+            steps < most && error < 2.0 * tolerance,
+            "{steps} steps, {error} K at a tolerance of {tolerance} K"
+        );
         errors.push((time / steps as f64, error));
     }
     let order = slope(&errors);
-    assert!(order >= 3.5, "order {order} in time: {errors:?}");
-    Ok(order)
+    assert!(order >= 3.5, "order {order} in time by tolerances: {errors:?}");
+    Ok(())
 }
 
 /// A coating on copper, from rest.
@@ -128,7 +209,9 @@ fn coated(heating: Option<Heating>, phase: Phase) -> Result<Model, ModelError> {
 #[test]
 fn order_three_and_a_half_in_time_under_constant_heating() -> Outcome {
     for heating in [film(3000.0, 2800.0)?, absorbed(4e6)?] {
-        time_order(&coated(heating, burn(3.0)?)?, 3.0)?;
+        let model = coated(heating, burn(3.0)?)?;
+        order_by_equal_steps(&model, 3.0)?;
+        order_by_tolerance(&model, 3.0)?;
     }
     Ok(())
 }
@@ -136,8 +219,9 @@ fn order_three_and_a_half_in_time_under_constant_heating() -> Outcome {
 #[test]
 fn order_three_and_a_half_in_time_under_a_ramp_of_heating() -> Outcome {
     for heating in [film(3000.0, 2800.0)?, absorbed(4e6)?] {
-        let ramp = burn(3.0)?.with_ramp_and_tail(seconds(3.0), seconds(0.0))?;
-        time_order(&coated(heating, ramp)?, 3.0)?;
+        let model = coated(heating, burn(3.0)?.with_ramp_and_tail(seconds(3.0), seconds(0.0))?)?;
+        order_by_equal_steps(&model, 3.0)?;
+        order_by_tolerance(&model, 3.0)?;
     }
     Ok(())
 }
