@@ -3,11 +3,15 @@
 use crate::walls::*;
 use soakdown::model::*;
 
-const STEEL: ([(f64, f64); 4], [(f64, f64); 4]) = (
+/// Conductivity and heat capacity against temperature.
+const STEEL: [[(f64, f64); 4]; 2] = [
     [(300.0, 14.9), (600.0, 19.8), (1000.0, 25.4), (1500.0, 31.7)],
     [(300.0, 477.0), (600.0, 557.0), (1000.0, 611.0), (1500.0, 682.0)],
-);
-const FELT: ([(f64, f64); 3], [(f64, f64); 2]) = ([(300.0, 0.05), (700.0, 0.12), (1300.0, 0.33)], [(300.0, 900.0), (1300.0, 1150.0)]);
+];
+const FELT: [[(f64, f64); 3]; 2] = [
+    [(300.0, 0.05), (700.0, 0.12), (1300.0, 0.33)],
+    [(300.0, 900.0), (700.0, 1000.0), (1300.0, 1150.0)],
+];
 
 fn phases() -> Result<Vec<Phase>, ModelError> {
     Ok(vec![
@@ -22,8 +26,8 @@ fn phases() -> Result<Vec<Phase>, ModelError> {
 
 #[test]
 fn in_minus_out_is_stored_to_rounding() -> Outcome {
-    let steel = tabled(&STEEL.0, 7900.0, &STEEL.1)?;
-    let felt = tabled(&FELT.0, 128.0, &FELT.1)?;
+    let steel = tabled(&STEEL[0], 7900.0, &STEEL[1])?;
+    let felt = tabled(&FELT[0], 128.0, &FELT[1])?;
     let idle = || -> Result<Idle, ModelError> {
         Ok(Idle::new(coefficient(5.0), temperature(320.0), pure(0.7), 0.3)?.with_purge(Some(Purge::new(coefficient(150.0), temperature(290.0))?)))
     };
@@ -65,7 +69,7 @@ fn in_minus_out_is_stored_to_rounding() -> Outcome {
 fn an_insulated_wall_keeps_what_a_flux_brought_and_ends_at_its_temperature() -> Outcome {
     // COMPUTED: ∫ρ c dT of piecewise straight c, 7900 · (477 ΔT + (557 − 477)/300 ΔT²/2) · 5 mm = 5.0e6 J/m² below 600 K, solved for ΔT.
     let (thickness, heat) = (0.005, 5.0e6);
-    let steel = tabled(&STEEL.0, 7900.0, &STEEL.1)?;
+    let steel = tabled(&STEEL[0], 7900.0, &STEEL[1])?;
     let model = Wall {
         heating: absorbed(1e6)?,
         phases: vec![burn(5.0)?, shutdown(300.0)?],
