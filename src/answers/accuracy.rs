@@ -6,13 +6,17 @@ use crate::run::{Quantity, RunError};
 use crate::wall::Grid;
 
 /// Share of the promised tolerance that one step may err by.
-pub(super) const STEP_SHARE: f64 = 0.2;
+const STEP_SHARE: f64 = 0.2;
 /// Share of the promised tolerance that the estimate must keep to.
 const WANTED_SHARE: f64 = 0.5;
 /// The second solution's steps may err by this many times more.
 const LOOSER: f64 = 3.0;
 /// Times that a grid is made finer before its estimate is accepted as it is.
 const MOST_ROUNDS: usize = 6;
+/// An estimate that stays above this share of the one before was not moved by a finer grid.
+const UNMOVED: f64 = 0.8;
+/// Then a step may err by this share of what it might before.
+const SMALLER_STEPS: f64 = 0.2;
 /// Halving a grid multiplies its error by four: the difference is three times what is left.
 const RICHARDSON: f64 = 3.0;
 /// Most phases of a profile in which the two solutions are compared, at either end.
@@ -27,6 +31,8 @@ pub struct Resolved {
     pub pass: Pass,
     /// Estimated error of peaks, crossings and phase ends, K.
     pub estimated_error: KelvinDifference,
+    /// Error of one step that goes with the grid, K.
+    pub step_tolerance: KelvinDifference,
 }
 
 /// Makes the grid for a station: finer until the estimate from a second solution, on every second node and with looser steps, keeps the promise.
@@ -39,28 +45,38 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         times: compared_times(model),
         ..Keep::default()
     };
-    let fine = PassSettings {
-        step_tolerance: STEP_SHARE * model.tolerance,
-        ..*settings
-    };
-    let coarse = PassSettings {
-        step_tolerance: LOOSER * STEP_SHARE * model.tolerance,
-        progress: None,
-        ..*settings
-    };
     let wanted = WANTED_SHARE * model.tolerance;
+    let mut step_tolerance = STEP_SHARE * model.tolerance;
     let mut fineness = 1.0;
+    let mut before = f64::INFINITY;
     let mut round = 0;
     loop {
         let grid = Grid::new(model, station, fineness);
+        let fine = PassSettings { step_tolerance, ..*settings };
+        let coarse = PassSettings {
+            step_tolerance: LOOSER * step_tolerance,
+            progress: None,
+            ..*settings
+        };
         let pass = Pass::of_profile(model, station_index, &grid, &fine, &keep)?;
         let second = Pass::of_profile(model, station_index, &grid.halved(), &coarse, &keep)?;
         let estimated_error = difference(&pass, &second) / RICHARDSON;
         round += 1;
         if estimated_error <= wanted || round == MOST_ROUNDS {
-            return Ok(Resolved { grid, pass, estimated_error });
+            return Ok(Resolved {
+                grid,
+                pass,
+                estimated_error,
+                step_tolerance,
+            });
         }
-        fineness *= (1.1 * (estimated_error / wanted).sqrt()).clamp(1.2, 2.5);
+        if estimated_error > UNMOVED * before {
+            // A finer grid did not help: the steps are to blame.
+            step_tolerance *= SMALLER_STEPS;
+        } else {
+            fineness *= (1.1 * (estimated_error / wanted).sqrt()).clamp(1.2, 2.5);
+        }
+        before = estimated_error;
     }
 }
 
@@ -105,7 +121,7 @@ fn difference(pass: &Pass, second: &Pass) -> KelvinDifference {
         largest = faces.chain(probes).fold(largest, f64::max);
     }
     for (index, (_, of)) in pass.plan.levels.iter().enumerate() {
-        if !matches!(of, LevelOf::Wait(_) | LevelOf::Limit(_)) {
+        if !matches!(of, LevelOf::Wait(_) | LevelOf::Limit(_) | LevelOf::Even) {
             continue;
         }
         if let (Some((a, slope)), Some((b, _))) = (pass.watcher.crossings()[index].last_down, second.watcher.crossings()[index].last_down) {

@@ -136,6 +136,23 @@ impl Plan {
         }
     }
 
+    /// What must be decided before a run may stop in its last phase: levels that stand for what is `wanted`, perhaps the evening out, and all peaks.
+    pub fn deciding(&self, model: &Model, station: &Station, wanted: impl Fn(LevelOf) -> bool, evened: bool) -> LastPhase {
+        let Some(at_rest) = Timeline::at_rest(model, station) else {
+            return LastPhase::to_the_end();
+        };
+        let indices = |wanted: &dyn Fn(LevelOf) -> bool| -> Vec<usize> {
+            self.levels
+                .iter()
+                .enumerate()
+                .filter(|(_, level)| wanted(level.1))
+                .map(|(index, _)| index)
+                .collect()
+        };
+        let even = indices(&|of| evened && of == LevelOf::Even).first().copied();
+        LastPhase::deciding(station, &model.surroundings, &at_rest, indices(&wanted), even, model.tolerance)
+    }
+
     pub fn index(&self, quantity: Quantity) -> Option<usize> {
         self.quantities.iter().position(|known| *known == quantity)
     }
@@ -181,21 +198,14 @@ impl Pass {
         let station = &model.stations[station_index];
         let plan = Plan::new(model, station_index, settings.off_limits);
         let origin = model.profile.last_burn_end().unwrap_or(0.0);
-        let last_phase = match (settings.until, Timeline::at_rest(model, station)) {
-            (None, Some(at_rest)) => {
-                let index_of = |wanted: &dyn Fn(LevelOf) -> bool| -> Vec<usize> {
-                    plan.levels
-                        .iter()
-                        .enumerate()
-                        .filter(|(_, level)| wanted(level.1))
-                        .map(|(index, _)| index)
-                        .collect()
-                };
-                let waits = index_of(&|of| matches!(of, LevelOf::Wait(_)));
-                let even = index_of(&|of| of == LevelOf::Even).first().copied();
-                LastPhase::deciding(station, &model.surroundings, &at_rest, waits, even, model.tolerance)
-            }
-            _ => LastPhase::to_the_end(),
+        let last_phase = match settings.until {
+            None => plan.deciding(
+                model,
+                station,
+                |of| !matches!(of, LevelOf::Melts(_) | LevelOf::Decomposes(_) | LevelOf::Even),
+                true,
+            ),
+            Some(_) => LastPhase::to_the_end(),
         };
         let segments = Timeline::of_profile(model, station, settings.until);
         Self::through(
@@ -288,9 +298,9 @@ impl Pass {
     }
 }
 
-/// A limit is kept where it was never passed, or for no longer than allowed.
+/// A limit is kept where it was never passed, or for no longer than allowed and for good at the end of the run.
 pub(super) fn kept(limit: &Limit, crossings: &Crossings) -> bool {
-    crossings.first_above.is_none() || (limit.allowed_over > 0.0 && crossings.time_above <= limit.allowed_over)
+    crossings.first_above.is_none() || (!crossings.above && limit.allowed_over > 0.0 && crossings.time_above <= limit.allowed_over)
 }
 
 /// Segments to go through, and from where.

@@ -1,6 +1,6 @@
 //! What happens: peaks, margins, soak-back, approach to steady state, waits, energy balance.
 
-use super::accuracy::{Resolved, STEP_SHARE, resolve};
+use super::accuracy::{Resolved, resolve};
 use super::pass::{Keep, LevelOf, Pass, PassSettings, kept, limits};
 use super::steady::{Burn, steady};
 use super::types::*;
@@ -74,7 +74,7 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
         let station = &model.stations[index];
         let last_burn_start = model.profile.last_burn().map(|burn| model.profile.starts()[burn]);
         let settings = PassSettings {
-            step_tolerance: STEP_SHARE * model.tolerance,
+            step_tolerance: resolved.step_tolerance,
             until: Some(until),
             stop: options.stop,
             ..PassSettings::default()
@@ -110,7 +110,7 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
             }
             _ => Steady::None,
         };
-        inside &= model.allowance.given && keeps_allowance(model, index, resolved, options)?;
+        inside &= !model.allowance.given || keeps_allowance(model, index, resolved, options)?;
         findings.extend(found(model, station, &pass, resolved));
         stations.push(answers(model, index, &pass, resolved, state));
         if options.history {
@@ -120,7 +120,6 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
             progress(0.5 + 0.5 * (index + 1) as f64 / count as f64);
         }
     }
-    let inside = inside || !model.allowance.given;
     let answers = RunAnswers {
         verdict: verdict(model, &stations, &findings, inside),
         worst: worst(&stations),
@@ -137,7 +136,7 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
 fn keeps_allowance(model: &Model, index: usize, resolved: &Resolved, options: &RunOptions<'_>) -> Result<bool, RunError> {
     let doubted = model.with_heating_times(model.allowance.heating);
     let settings = PassSettings {
-        step_tolerance: STEP_SHARE * model.tolerance,
+        step_tolerance: resolved.step_tolerance,
         off_limits: model.allowance.limits,
         stop: options.stop,
         ..PassSettings::default()
@@ -439,7 +438,7 @@ fn own_times(model: &Model, resolved: &[Resolved], until: Seconds, options: &Run
     let mut times = vec![0.0];
     for (index, resolved) in resolved.iter().enumerate() {
         let settings = PassSettings {
-            step_tolerance: STEP_SHARE * model.tolerance,
+            step_tolerance: resolved.step_tolerance,
             until: Some(until),
             stop: options.stop,
             ..PassSettings::default()

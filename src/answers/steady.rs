@@ -1,6 +1,6 @@
 //! How close the wall comes to the steady state of an endless last burn, and what that would mean.
 
-use super::pass::{Keep, Pass, PassSettings, Plan, Stretch, limits};
+use super::pass::{Keep, LevelOf, Pass, PassSettings, Plan, Stretch, limits};
 use super::types::{Steady, SteadyState};
 use crate::model::{HeatingModel, Kelvin, Model, Place, Seconds};
 use crate::run::{Course, LastPhase, Moment, Quantity, RunError, Timeline};
@@ -93,10 +93,8 @@ pub(super) fn steady(model: &Model, station_index: usize, grid: &Grid, settings:
     let mut within_limits = rest_within && within(&way);
     if within_limits && !limits(station).is_empty() {
         let segments = Timeline::after_last_burn(model, station, burn.start);
-        let deciding = match Timeline::at_rest(model, station) {
-            Some(at_rest) => LastPhase::deciding(station, &model.surroundings, &at_rest, Vec::new(), None, model.tolerance),
-            None => LastPhase::to_the_end(),
-        };
+        let plan = Plan::new(model, station_index, settings.off_limits);
+        let deciding = plan.deciding(model, station, |of| matches!(of, LevelOf::Limit(_)), false);
         let soak = Pass::through(
             model,
             station_index,

@@ -59,7 +59,11 @@ impl Recorder {
             if time > moment.to {
                 break;
             }
-            self.rows.push(row(moment, moment.theta(time)));
+            // The asked clock itself, not what θ makes of it.
+            self.rows.push(Row {
+                clock: time,
+                ..row(moment, moment.theta(time))
+            });
             self.next += 1;
         }
         while let Some(time) = self.profile_times.get(self.next_profile).copied() {

@@ -1,6 +1,7 @@
 //! Where the nodes lie: a value, made once from the nominal case and handed to every study.
 
-use crate::model::{HeatingModel, KelvinDifference, LogRows, Metres, Model, Outside, PhaseKind, Seconds, Station};
+use super::system::outside_losses;
+use crate::model::{HeatingModel, KelvinDifference, LogRows, Metres, Model, Outside, PhaseKind, Seconds, Station, WattsPerSquareMetre};
 
 /// Node positions in each layer as shares of its thickness, 0 and 1 included: layers stretch with their thickness, the grid stays.
 #[derive(Clone, Debug, PartialEq)]
@@ -23,11 +24,6 @@ impl Grid {
         let flux = strongest_flux(model, station);
         let mut reached: Seconds = promised;
         let mut layers = Vec::with_capacity(station.layers.len());
-        let cooled = match &station.outer.outside {
-            Outside::Fixed(_) => true,
-            Outside::Open(losses) => losses.coolant.is_some(),
-            Outside::Adiabatic => false,
-        };
         let last = station.layers.len() - 1;
         for (index, layer) in station.layers.iter().enumerate() {
             let material = &layer.material;
@@ -44,8 +40,12 @@ impl Grid {
             } else {
                 layer.thickness
             };
-            if index == last && cooled {
-                far = 0.06 * (diffusivity * promised).sqrt();
+            if index == last {
+                let length = (diffusivity * promised).sqrt();
+                far = far.min(match outer_jump(model, station, flux) {
+                    Jump::Temperature => 0.06 * length,
+                    Jump::Flux(jump) => face_cell(model.tolerance, jump, conductivity, length),
+                });
             }
             // Heat needs this long to cross the layer; what lies behind it is stepped no faster.
             reached = reached.max(0.1 * layer.thickness * layer.thickness / diffusivity);
@@ -83,7 +83,7 @@ fn first_promised_time(model: &Model) -> Seconds {
 }
 
 /// The strongest flux into the cold wall that the profile brings, W/m².
-fn strongest_flux(model: &Model, station: &Station) -> f64 {
+fn strongest_flux(model: &Model, station: &Station) -> WattsPerSquareMetre {
     let Some(heating) = &station.heating else { return 1e4 };
     let scale = model
         .profile
@@ -102,6 +102,30 @@ fn strongest_flux(model: &Model, station: &Station) -> f64 {
         HeatingModel::Log(LogRows::Film { rows }) => rows.iter().map(|row| row.1 * (row.2 - model.start).abs()).fold(0.0, f64::max),
     };
     heating.factor * convection + 1e4
+}
+
+/// What an outer face is met with at once.
+enum Jump {
+    /// A temperature.
+    Temperature,
+    /// A flux, W/m².
+    Flux(WattsPerSquareMetre),
+}
+
+/// What the outer face is met with at the start, and where a coolant starts or stops.
+fn outer_jump(model: &Model, station: &Station, through_the_wall: WattsPerSquareMetre) -> Jump {
+    let Outside::Open(losses) = &station.outer.outside else {
+        return if matches!(station.outer.outside, Outside::Adiabatic) {
+            Jump::Flux(1.0)
+        } else {
+            Jump::Temperature
+        };
+    };
+    let at_start = outside_losses(losses, &model.surroundings, model.start).0.abs();
+    let coolant = losses.coolant.as_ref().map_or(0.0, |coolant| {
+        through_the_wall + coolant.coefficient * (model.start - coolant.temperature).abs()
+    });
+    Jump::Flux(at_start.max(coolant).max(1.0))
 }
 
 /// The widest face cell that keeps the face temperature: with a flux q into the half cell at a face, node-centred volumes are off by

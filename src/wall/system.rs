@@ -634,7 +634,7 @@ fn radiated(face: Kelvin, surfaces: Kelvin) -> FluxAndSlope {
 }
 
 /// Heat from an outer face by convection and radiation, less the sun, per area of that face.
-fn outside_losses(losses: &Losses, surroundings: &Surroundings, face: Kelvin) -> FluxAndSlope {
+pub(super) fn outside_losses(losses: &Losses, surroundings: &Surroundings, face: Kelvin) -> FluxAndSlope {
     let (mut flux, mut slope) = match losses.convection {
         Convection::None => (0.0, 0.0),
         Convection::Coefficient(coefficient) => (coefficient * (face - surroundings.air), coefficient),

@@ -25,20 +25,18 @@ fn wall() -> Result<Model, ModelError> {
     let jacket = tabled(&[(293.15, 16.0), (1293.15, 32.0)], 8000.0, &[(300.0, 500.0)])?;
     let air = Convection::natural_vertical(metres(0.3))?;
     Wall {
-        shape: Shape::Plane,
-        layers: vec![
-            layer("coating", &coating, 0.5e-3)?,
-            layer("liner", &liner, 8e-3)?.with_joint(contact(5000.0)?),
-            layer("jacket", &jacket, 3e-3)?,
-        ],
         heating: film(4000.0, 3000.0)?,
         idle: Idle::new(coefficient(5.0), temperature(293.15), pure(0.8), 1.0)?,
         outer: OuterFace::new(Outside::Open(Losses::new(air, Some(pure(0.8)))?), None),
         start: 293.15,
         ambient: 293.15,
-        phases: vec![Phase::burn(seconds(10.0))?, Phase::shutdown(seconds(3590.0))?],
-        probes: vec![],
+        phases: vec![burn(10.0)?, shutdown(3590.0)?],
         waits: vec![(Place::OuterFace, 321.15)],
+        ..Wall::of(vec![
+            layer("coating", &coating, 0.5e-3)?,
+            layer("liner", &liner, 8e-3)?.with_joint(contact(5000.0)?),
+            layer("jacket", &jacket, 3e-3)?,
+        ])?
     }
     .model()
 }
