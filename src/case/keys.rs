@@ -1,6 +1,7 @@
 //! Every key of the case file: its name, what it means, what is expected there, and the numbers that make sense. Keys of features that are not built yet stand
 //! here too: they are known names.
 
+use super::library;
 use crate::units::Kind;
 
 /// Numbers that make sense, in SI.
@@ -55,6 +56,9 @@ const LENGTH: Bounds = POSITIVE.within(1e-10, 1e3);
 const COEFFICIENT: Bounds = Bounds::new(0.0, false, 1e9).odd(0.0, 1e6);
 const CONDUCTANCE: Bounds = POSITIVE.within(1e-6, 1e10).odd(1.0, 1e7);
 
+/// The version of the case file's format.
+pub(super) const VERSION: i32 = 1;
+
 /// What is expected at a key.
 #[derive(Debug)]
 pub(super) enum Expect {
@@ -64,12 +68,16 @@ pub(super) enum Expect {
     Number(Bounds),
     /// A bare whole number from the first to the second.
     Whole(i128, i128),
+    /// The version of the format, a whole number; one that is not [`VERSION`] is told apart from a slip.
+    Version,
     /// true or false.
     Switch,
     /// One of these words.
     Word(&'static [&'static str]),
     /// Any text.
     Text,
+    /// Any text; an editor offers these.
+    Known(fn() -> Vec<&'static str>),
     /// Text by which paths, places and columns name something.
     Name,
     /// One value or a list of pairs of temperature and value; [`Kind::Number`] for pure numbers.
@@ -166,10 +174,18 @@ pub(super) const PHASES: &[&str] = &["burn", "hold", "shutdown"];
 /// Places that every station has.
 pub(super) const PLACES: &[&str] = &["hot-face", "outer-face", "everywhere"];
 
+fn materials() -> Vec<&'static str> {
+    library::names().collect()
+}
+
+fn places() -> Vec<&'static str> {
+    PLACES.to_vec()
+}
+
 pub(super) static CASE: Section = Section {
     title: "the case file",
     keys: &[
-        required("soakdown", "Version of this file's format: 1.", Expect::Whole(i128::MIN, i128::MAX)),
+        required("soakdown", "Version of this file's format: 1.", Expect::Version),
         key("title", "What the case is about; stands on every page.", Expect::Text),
         required("surroundings", "The air and what the wall radiates to.", Expect::Section(&SURROUNDINGS)),
         key(
@@ -458,7 +474,7 @@ static LAYER: Section = Section {
         required(
             "material",
             "Name of a built-in material (soakdown materials lists them) or of a [material.NAME].",
-            Expect::Text,
+            Expect::Known(materials),
         ),
         required(
             "thickness",
@@ -764,7 +780,7 @@ static WAIT: Section = Section {
         required(
             "where",
             "\"outer-face\", \"hot-face\", \"everywhere\", a layer, a joint \"liner|jacket\", or a probe.",
-            Expect::Text,
+            Expect::Known(places),
         ),
         key(
             "below",
