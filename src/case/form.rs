@@ -28,8 +28,11 @@ impl Form<'_> {
                 }
             }
         }
+        let name = table.entry("name").filter(|_| section.is_named());
+        let head = self.findings.head(spot);
+        let blamed = name.filter(|_| head != *spot).map_or(head, |name| name.node.words());
         for key in section.keys.iter().filter(|key| key.required && !table.has(key.name)) {
-            self.findings.at(spot, missing(key.name, &key.expect, section.title));
+            self.findings.at(&blamed, missing(key.name, &key.expect, section.title));
         }
     }
 

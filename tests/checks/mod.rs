@@ -8,6 +8,7 @@ mod cylinder;
 mod estimate;
 mod fire;
 mod lumped;
+mod materials;
 mod multilayer;
 mod nonlinear;
 mod semi_infinite;

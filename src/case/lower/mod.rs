@@ -91,7 +91,7 @@ impl Lowering<'_> {
     /// A key that is required here, because of something else.
     fn missing(&mut self, spot: &Spot, key: &str, why: &str) {
         self.error(
-            spot,
+            &self.findings.head(spot),
             "missing-key",
             format!("the key \"{key}\" is missing"),
             format!("\"{key}\" is required {why}"),
