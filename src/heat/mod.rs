@@ -5,9 +5,11 @@ mod gases;
 mod natural;
 mod radiation;
 mod slope;
+mod tabulated;
 
 pub use gap::{GapFlux, gap_flux};
 pub use gases::{AirProperties, air, gap_gas_conductivity};
 pub use natural::{horizontal_cylinder, horizontal_cylinder_nusselt, vertical_plate, vertical_plate_nusselt};
 pub use radiation::{disk_to_disk_view, grey_exchange, open_cylinder_view};
 pub use slope::Slope;
+pub use tabulated::TabulatedCoefficient;
