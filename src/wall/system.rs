@@ -2,7 +2,7 @@
 
 use super::curve::Share;
 use super::{Curve, Forcing, Grid, NodeMap, Over};
-use crate::heat::{gap_flux, grey_exchange, horizontal_cylinder, vertical_plate};
+use crate::heat::{convected, gap_flux, grey_exchange};
 use crate::model::{
     Convection, Gap, Kelvin, Losses, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table, WattsPerSquareMetre,
 };
@@ -652,12 +652,8 @@ pub(super) fn outside_losses(losses: &Losses, surroundings: &Surroundings, face:
     let (mut flux, mut slope) = match losses.convection {
         Convection::None => (0.0, 0.0),
         Convection::Coefficient(coefficient) => (coefficient * (face - surroundings.air), coefficient),
-        Convection::NaturalVertical(height) => {
-            let lost = vertical_plate(face, surroundings.air, surroundings.pressure, height);
-            (lost.value, lost.slope)
-        }
-        Convection::NaturalHorizontalCylinder(diameter) => {
-            let lost = horizontal_cylinder(face, surroundings.air, surroundings.pressure, diameter);
+        _ => {
+            let lost = convected(&losses.convection, surroundings, face);
             (lost.value, lost.slope)
         }
     };

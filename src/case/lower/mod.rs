@@ -1,6 +1,7 @@
 //! From the checked tree to the model: what the form can't show. What is required depends on other keys here, names must name something, and each
 //! rule of the case file has its place.
 
+mod convection;
 mod coolant;
 mod faces;
 mod heating;
