@@ -10,8 +10,10 @@ mod keys;
 mod library;
 mod load;
 mod lower;
+mod material_card;
 mod names;
 mod paths;
+mod schema;
 mod settings;
 mod suggest;
 mod touch;
@@ -22,3 +24,5 @@ mod tests;
 
 pub use checked::{Case, CaseFile, Input, InputValue};
 pub use load::load;
+pub use material_card::{Confidence, MaterialCard, MaterialError, Said, material_card, material_cards};
+pub use schema::{Schema, schema};
