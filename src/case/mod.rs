@@ -24,5 +24,5 @@ mod tests;
 
 pub use checked::{Case, CaseFile, Input, InputValue};
 pub use load::load;
-pub use material_card::{Confidence, MaterialCard, MaterialError, Said, material_card, material_cards};
+pub use material_card::{Confidence, MaterialCard, Said, material_card, material_cards};
 pub use schema::{Schema, schema};

@@ -1,6 +1,7 @@
 //! The command as it would be typed again: what documents carry. Without `--out`, `--quiet` and `--color`, which change no answer.
 
-use super::arguments::{CheckArguments, Common, RunArguments, UnitsChoice};
+use super::arguments::{CheckArguments, Common, MaterialsArguments, RunArguments, UnitsChoice};
+use clap::ValueEnum;
 use std::path::Path;
 
 /// `soakdown check …`.
@@ -20,6 +21,27 @@ pub fn run_line(arguments: &RunArguments) -> String {
         words.extend(["--times".to_owned(), quoted(&times.join(", "))]);
     }
     finish(words, &arguments.common)
+}
+
+/// `soakdown materials …`.
+pub fn materials_line(arguments: &MaterialsArguments) -> String {
+    let mut words = vec!["soakdown".to_owned(), "materials".to_owned()];
+    words.extend(arguments.name.as_deref().map(quoted));
+    let confidence = arguments.confidence.and_then(|choice| choice.to_possible_value());
+    let options = [
+        ("--find", arguments.find.clone()),
+        ("--confidence", confidence.map(|choice| choice.get_name().to_owned())),
+        ("--limit-above", arguments.limit_above.as_ref().map(|limit| limit.text.clone())),
+    ];
+    for (option, value) in options {
+        if let Some(value) = value {
+            words.extend([option.to_owned(), quoted(&value)]);
+        }
+    }
+    if arguments.json {
+        words.push("--json".to_owned());
+    }
+    words.join(" ")
 }
 
 fn finish(mut words: Vec<String>, common: &Common) -> String {

@@ -7,10 +7,12 @@ mod exit;
 mod failure;
 mod files;
 mod interrupt;
+mod materials;
 mod mistakes;
 mod printer;
 mod progress;
 mod run;
+mod schema;
 mod start;
 
 pub use start::start;

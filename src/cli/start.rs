@@ -1,12 +1,14 @@
 //! From the words of the command line to a command, and from its end to an exit status.
 
-use super::arguments::{Arguments, Command, Common, UnitsChoice};
+use super::arguments::{Arguments, ColorChoice, Command, Common, UnitsChoice};
 use super::check::check;
 use super::exit::ExitStatus;
 use super::failure::Failure;
+use super::materials::materials;
 use super::mistakes::{plain_error, rendered};
 use super::printer::Printer;
 use super::run::run;
+use super::schema::schema;
 use clap::Parser;
 use clap::error::ErrorKind;
 use soakdown::report::Units;
@@ -18,12 +20,16 @@ pub fn start(words: impl Iterator<Item = OsString>) -> ExitStatus {
         Ok(arguments) => arguments,
         Err(told) => return usage(&told),
     };
-    let common = match &arguments.command {
-        Command::Check(check) => &check.common,
-        Command::Run(run) => &run.common,
+    let (color, quiet) = match &arguments.command {
+        Command::Check(check) => (check.common.color, check.common.quiet),
+        Command::Run(run) => (run.common.color, run.common.quiet),
+        Command::Materials(materials) => (materials.color, false),
+        Command::Schema(_) => (ColorChoice::Never, false),
     };
-    let printer = Printer::new(common.color, common.quiet);
+    let printer = Printer::new(color, quiet);
     let result = match &arguments.command {
+        Command::Materials(arguments) => materials(arguments, printer),
+        Command::Schema(arguments) => schema(arguments, printer),
         Command::Check(arguments) => check(arguments, printer),
         Command::Run(arguments) => run(arguments, printer),
     };
@@ -61,7 +67,12 @@ fn refusal(diagnostics: &soakdown::diagnostics::Diagnostics) -> String {
 
 /// Units of the screen.
 pub fn units(common: &Common) -> Units {
-    match common.units {
+    units_of(common.units)
+}
+
+/// Units of the screen.
+pub fn units_of(choice: UnitsChoice) -> Units {
+    match choice {
         UnitsChoice::Si => Units::Si,
         UnitsChoice::Us => Units::Us,
     }

@@ -6,14 +6,18 @@ mod cautions;
 mod check;
 mod check_page;
 mod csv_files;
+mod curve;
 mod error;
 mod figures;
 mod findings;
 mod json;
+mod materials;
+mod materials_page;
 mod page;
 mod places;
 mod profile_text;
 mod result;
+mod results_schema;
 mod run_page;
 #[cfg(test)]
 mod sample;
@@ -26,7 +30,10 @@ pub use error::ReportError;
 pub use figures::Units;
 pub use findings::warnings_of_run;
 pub use json::json;
+pub use materials::MaterialsDocument;
+pub use materials_page::{material_page, materials_page};
 pub use result::ResultDocument;
+pub use results_schema::results_schema;
 pub use run_page::run_page;
 
 /// The name and version that every document carries.
