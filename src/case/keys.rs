@@ -271,6 +271,30 @@ static PHASE: Section = Section {
     ],
 };
 
+/// A list of phases.
+pub(super) static PHASES_LIST: Expect = Expect::Sections(&PHASE);
+
+/// What is expected at a key of a phase.
+pub(super) fn phase_expect(name: &str) -> Option<&'static Expect> {
+    PHASE.key(name).map(|key| &key.expect)
+}
+
+/// A ready profile's file. Its phases are looked at once the values are put in.
+pub(super) static READY_PROFILE: Section = Section {
+    title: "a ready profile",
+    keys: &[
+        required("title", Expect::Text),
+        required("explanation", Expect::Text),
+        required("phases", Expect::Free),
+        key("values", Expect::Free),
+    ],
+};
+
+pub(super) static READY_VALUE: Section = Section {
+    title: "a named value",
+    keys: &[required("default", Expect::Free), required("meaning", Expect::Text)],
+};
+
 /// Whether a phase knows this key.
 pub(super) fn is_phase_key(name: &str) -> bool {
     PHASE.key(name).is_some()
@@ -546,7 +570,8 @@ static ABORT: Section = Section {
 static FIT: Section = Section {
     title: "[fit]",
     keys: &[
-        required("free", Expect::Sections(&FREE)),
+        // fit needs it; a run beside a log does not.
+        key("free", Expect::Sections(&FREE)),
         required("time", Expect::Text),
         key("offset", Expect::Quantity(Kind::Time, ANY)),
         required("columns", Expect::Sections(&COLUMN)),

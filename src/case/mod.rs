@@ -12,7 +12,9 @@ mod load;
 mod lower;
 mod names;
 mod paths;
+mod ready;
 mod settings;
+mod shipped;
 mod suggest;
 mod touch;
 mod tree;
@@ -22,3 +24,4 @@ mod tests;
 
 pub use checked::{Case, CaseFile, Input, InputValue};
 pub use load::load;
+pub use shipped::{ReadyProfile, ReadyValue, STARTERS, Starter, ready_profile, ready_profiles};

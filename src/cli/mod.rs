@@ -3,12 +3,16 @@
 mod arguments;
 mod check;
 mod command_line;
+mod completions;
 mod exit;
 mod failure;
 mod files;
 mod interrupt;
+mod man;
 mod mistakes;
+mod new;
 mod printer;
+mod profiles;
 mod progress;
 mod run;
 mod start;

@@ -2,10 +2,14 @@
 
 use super::arguments::{Arguments, Command, Common, UnitsChoice};
 use super::check::check;
+use super::completions::completions;
 use super::exit::ExitStatus;
 use super::failure::Failure;
+use super::man::man;
 use super::mistakes::{plain_error, rendered};
+use super::new::new;
 use super::printer::Printer;
+use super::profiles::profiles;
 use super::run::run;
 use clap::Parser;
 use clap::error::ErrorKind;
@@ -19,13 +23,18 @@ pub fn start(words: impl Iterator<Item = OsString>) -> ExitStatus {
         Err(told) => return usage(&told),
     };
     let common = match &arguments.command {
-        Command::Check(check) => &check.common,
-        Command::Run(run) => &run.common,
+        Command::Check(check) => Some(&check.common),
+        Command::Run(run) => Some(&run.common),
+        Command::New(_) | Command::Profiles(_) | Command::Completions(_) | Command::Man(_) => None,
     };
-    let printer = Printer::new(common.color, common.quiet);
+    let printer = common.map_or_else(Printer::plain, |common| Printer::new(common.color, common.quiet));
     let result = match &arguments.command {
         Command::Check(arguments) => check(arguments, printer),
         Command::Run(arguments) => run(arguments, printer),
+        Command::New(arguments) => new(arguments, printer),
+        Command::Profiles(arguments) => profiles(arguments, printer),
+        Command::Completions(arguments) => completions(arguments, printer),
+        Command::Man(arguments) => man(arguments, printer),
     };
     result.unwrap_or_else(|failure| {
         printer.mistake(&match &failure {
