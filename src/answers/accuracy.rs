@@ -6,7 +6,7 @@ use crate::run::{Quantity, RunError};
 use crate::wall::Grid;
 
 /// Share of the promised tolerance that one step may err by.
-const STEP_SHARE: f64 = 0.2;
+const STEP_SHARE: f64 = 0.5;
 /// Share of the promised tolerance that the estimate must keep to.
 const WANTED_SHARE: f64 = 0.5;
 /// The second solution's steps may err by this many times more.

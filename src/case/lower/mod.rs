@@ -1,6 +1,7 @@
 //! From the checked tree to the model: what the form can't show. What is required depends on other keys here, names must name something, and each
 //! rule of the case file has its place.
 
+mod convection;
 mod coolant;
 mod faces;
 mod heating;
@@ -21,6 +22,7 @@ mod wait;
 
 use super::checked::{CaseFile, Input, InputValue};
 use super::findings::Findings;
+use super::keys::VERSION;
 use super::suggest;
 use super::tree::{Node, Spot, Table, Value};
 use crate::diagnostics::Diagnostic;
@@ -28,6 +30,9 @@ use crate::model::{Allowance, Model, ModelError, ModelParts};
 use crate::units::Kind;
 use material::Materials;
 use std::path::Path;
+
+pub(super) use limit::kind_of;
+pub(super) use material::{NEEDED, PROPERTIES, property, said};
 
 /// What lowering reads and what it adds to.
 pub(super) struct Lowering<'a> {
@@ -180,12 +185,12 @@ impl Lowering<'_> {
     fn version(&mut self, case: &Table) {
         let Some(node) = case.node("soakdown") else { return };
         #[expect(clippy::float_cmp, reason = "whole numbers")]
-        if node.number().is_some_and(|version| version != 1.0) {
+        if node.number().is_some_and(|version| version != f64::from(VERSION)) {
             self.error(
                 &node.spot,
                 "format-version",
                 "this version of the case file is unknown",
-                "this program reads version 1",
+                format!("this program reads version {VERSION}"),
             );
         }
     }
