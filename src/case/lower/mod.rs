@@ -61,7 +61,7 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
     let allowance = lowering.allowance(case);
     let tolerance = lowering.tolerance(case);
     materials.finish(&mut lowering);
-    lowering.later(root, &stations);
+    lowering.later(root, &stations, profile.as_ref());
     let parts = ModelParts {
         title,
         surroundings: weather.surroundings?,
