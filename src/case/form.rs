@@ -41,6 +41,8 @@ impl Form<'_> {
         let value = std::mem::replace(&mut node.value, Value::Bad);
         match (value, expect) {
             (Value::Bad, _) => {}
+            // Found in order before: a value of a ready profile.
+            (value @ (Value::Number(_) | Value::Points(_)), _) => node.value = value,
             (value, Expect::Free) => node.value = value,
             (value, Expect::OneOf(choices)) => {
                 let choice = choices.iter().find(|choice| accepts(choice, &value));

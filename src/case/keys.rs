@@ -409,6 +409,33 @@ static PHASE: Section = Section {
     ],
 };
 
+/// A list of phases.
+pub(super) static PHASES_LIST: Expect = Expect::Sections(&PHASE);
+
+/// What is expected at a key of a phase.
+pub(super) fn phase_expect(name: &str) -> Option<&'static Expect> {
+    PHASE.key(name).map(|key| &key.expect)
+}
+
+/// A ready profile's file. Its phases are looked at once the values are put in.
+pub(super) static READY_PROFILE: Section = Section {
+    title: "a ready profile",
+    keys: &[
+        required("title", "In a few words.", Expect::Text),
+        required("explanation", "What it stands for.", Expect::Text),
+        required("phases", "As in a case, with \"$name\" where a value goes.", Expect::Free),
+        key("values", "Each value with its default and meaning.", Expect::Free),
+    ],
+};
+
+pub(super) static READY_VALUE: Section = Section {
+    title: "a named value",
+    keys: &[
+        required("default", "Taken where the case gives no other.", Expect::Free),
+        required("meaning", "What it is.", Expect::Text),
+    ],
+};
+
 /// Whether a phase knows this key.
 pub(super) fn is_phase_key(name: &str) -> bool {
     PHASE.key(name).is_some()
@@ -977,7 +1004,12 @@ static ABORT: Section = Section {
 static FIT: Section = Section {
     title: "[fit]",
     keys: &[
-        required("free", "The inputs that may be calibrated.", Expect::Sections(&FREE)),
+        // fit needs it; a run beside a log does not.
+        key(
+            "free",
+            "The inputs that may be calibrated; a run with --log does without.",
+            Expect::Sections(&FREE),
+        ),
         required(
             "time",
             "The log's time column; its zero is the start of the profile, unless offset is given.",

@@ -1,6 +1,8 @@
 //! What was typed.
 
-use clap::{Args, Parser, Subcommand, ValueEnum};
+use clap::builder::PossibleValuesParser;
+use clap::{Args, Parser, Subcommand, ValueEnum, ValueHint};
+use soakdown::case::STARTERS;
 use soakdown::units::{read_temperature, read_time};
 use std::path::PathBuf;
 
@@ -15,6 +17,34 @@ Exit status:
   130  interrupted
 
 Heat, pressure and fire hurt people. Local codes, the site's safety plan and licensed engineers come before anything printed here.";
+
+const NEW_HELP: &str = "\
+Examples:
+  soakdown new my-wall
+  soakdown new chamber --kind heat-sink-chamber
+  soakdown new --list
+
+The file runs as it is and keeps its limits; its numbers are invented, and each is there to be replaced.
+A file that is there already is left as it is (exit status 1).";
+
+const PROFILES_HELP: &str = "\
+Examples:
+  soakdown profiles
+  soakdown profiles pulse-train
+  soakdown profiles pulse-train --file > my-pulses.toml
+
+A case uses one with [profile] use = \"pulse-train\", or use = \"my-pulses.toml\".";
+
+const COMPLETIONS_HELP: &str = "\
+Examples:
+  soakdown completions bash > ~/.local/share/bash-completion/completions/soakdown
+  soakdown completions zsh > ~/.zfunc/_soakdown        (with fpath+=~/.zfunc before compinit)
+  soakdown completions fish > ~/.config/fish/completions/soakdown.fish";
+
+const MAN_HELP: &str = "\
+Examples:
+  soakdown man | man -l -
+  soakdown man --out ~/.local/share/man/man1        then: man soakdown-run";
 
 const CHECK_HELP: &str = "\
 Examples:
@@ -38,6 +68,7 @@ Examples:
   soakdown run examples/heat-sink-chamber.toml
   soakdown run chamber.toml --set profile.phases.0.burn=\"3 s\" --strict
   soakdown run chamber.toml --out results --times \"1 s, 2 s, 10 s\"
+  soakdown run chamber.toml --log firing.csv --out results
 
 Exit status: 0 computed, 1 failed, 2 wrong usage or case not accepted, 3 with --strict and a verdict
 other than within-limits, 130 interrupted.";
@@ -54,6 +85,9 @@ pub struct Arguments {
 /// The commands.
 #[derive(Debug, Subcommand)]
 pub enum Command {
+    /// Writes a commented starter case to work from
+    #[command(after_help = NEW_HELP)]
+    New(NewArguments),
     /// Is the case sound? Every input with where it comes from, the grid, the phases, what heats the wall now
     #[command(after_help = CHECK_HELP)]
     Check(CheckArguments),
@@ -66,6 +100,57 @@ pub enum Command {
     /// The JSON Schema (2020-12) of the case file, or of the results
     #[command(after_help = SCHEMA_HELP)]
     Schema(SchemaArguments),
+    /// Lists the ready time profiles, or explains one with its values and phases
+    #[command(after_help = PROFILES_HELP)]
+    Profiles(ProfilesArguments),
+    /// Prints the completions of a shell
+    #[command(after_help = COMPLETIONS_HELP)]
+    Completions(CompletionsArguments),
+    /// Prints the manual page, or writes those of all commands into a folder
+    #[command(after_help = MAN_HELP)]
+    Man(ManArguments),
+}
+
+/// `soakdown new`.
+#[derive(Debug, Args)]
+pub struct NewArguments {
+    /// Name of the case: writes NAME.toml, and never over a file that is there
+    #[arg(required_unless_present = "list", value_hint = ValueHint::FilePath)]
+    pub name: Option<PathBuf>,
+    /// Which scenario [default: the simplest, bare-plate]
+    #[arg(long, value_parser = PossibleValuesParser::new(STARTERS.iter().map(|starter| starter.kind)))]
+    pub kind: Option<String>,
+    /// Lists the scenarios and writes nothing
+    #[arg(long)]
+    pub list: bool,
+}
+
+/// `soakdown profiles`.
+#[derive(Debug, Args)]
+pub struct ProfilesArguments {
+    /// A built-in profile, or the path of one of your own [default: all built-in ones]
+    pub name: Option<String>,
+    /// Print one JSON document on standard output, and nothing else there
+    #[arg(long)]
+    pub json: bool,
+    /// Print the profile's file as it is, to be copied and changed
+    #[arg(long, requires = "name", conflicts_with = "json")]
+    pub file: bool,
+}
+
+/// `soakdown completions`.
+#[derive(Debug, Args)]
+pub struct CompletionsArguments {
+    /// For which shell
+    pub shell: clap_complete::Shell,
+}
+
+/// `soakdown man`.
+#[derive(Debug, Args)]
+pub struct ManArguments {
+    /// Write soakdown.1 and one page for each command into this folder, which is made if need be
+    #[arg(long, value_name = "DIR", value_hint = ValueHint::DirPath)]
+    pub out: Option<PathBuf>,
 }
 
 /// `soakdown check`.
@@ -89,6 +174,9 @@ pub struct RunArguments {
     /// Rows of trace.csv and profiles of depths.csv at exactly these times, as in "1 s, 2 s, 10 s"; needs --out
     #[arg(long, value_name = "TIMES", value_delimiter = ',', value_parser = clock)]
     pub times: Vec<Quantity>,
+    /// Readings of a test to put beside the run, as CSV; the case's [fit] says which column is which probe
+    #[arg(long, value_name = "LOG.csv", value_hint = ValueHint::FilePath)]
+    pub log: Option<PathBuf>,
     /// What every answering command takes.
     #[command(flatten)]
     pub common: Common,

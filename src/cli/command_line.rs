@@ -1,6 +1,6 @@
 //! The command as it would be typed again: what documents carry. Without `--out`, `--quiet` and `--color`, which change no answer.
 
-use super::arguments::{CheckArguments, Common, MaterialsArguments, RunArguments, UnitsChoice};
+use super::arguments::{CheckArguments, Common, MaterialsArguments, ProfilesArguments, RunArguments, UnitsChoice};
 use clap::ValueEnum;
 use std::path::Path;
 
@@ -19,6 +19,9 @@ pub fn run_line(arguments: &RunArguments) -> String {
     if !arguments.times.is_empty() {
         let times: Vec<&str> = arguments.times.iter().map(|time| time.text.as_str()).collect();
         words.extend(["--times".to_owned(), quoted(&times.join(", "))]);
+    }
+    if let Some(log) = &arguments.log {
+        words.extend(["--log".to_owned(), path_word(log)]);
     }
     finish(words, &arguments.common)
 }
@@ -44,6 +47,16 @@ pub fn materials_line(arguments: &MaterialsArguments) -> String {
     words.join(" ")
 }
 
+/// `soakdown profiles …`.
+pub fn profiles_line(arguments: &ProfilesArguments) -> String {
+    let mut words = vec!["soakdown".to_owned(), "profiles".to_owned()];
+    words.extend(arguments.name.as_deref().map(quoted));
+    if arguments.json {
+        words.push("--json".to_owned());
+    }
+    words.join(" ")
+}
+
 fn finish(mut words: Vec<String>, common: &Common) -> String {
     for setting in &common.set {
         words.extend(["--set".to_owned(), quoted(setting)]);
@@ -60,7 +73,7 @@ fn finish(mut words: Vec<String>, common: &Common) -> String {
     words.join(" ")
 }
 
-fn path_word(path: &Path) -> String {
+pub fn path_word(path: &Path) -> String {
     quoted(&path.to_string_lossy())
 }
 

@@ -1,7 +1,7 @@
 //! What happens at the two faces: heating, idle, the outside, and the surroundings they share.
 
-use super::{Kelvin, Metres, ModelError, Pascals, Seconds, Table, WattsPerSquareMetre, WattsPerSquareMetreKelvin};
-use uom::si::f64::{HeatFluxDensity, HeatTransfer, Length, Pressure, ThermodynamicTemperature, Time};
+use super::{Kelvin, Metres, MetresPerSecond, ModelError, Pascals, Seconds, Table, WattsPerSquareMetre, WattsPerSquareMetreKelvin};
+use uom::si::f64::{HeatFluxDensity, HeatTransfer, Length, Pressure, ThermodynamicTemperature, Time, Velocity};
 
 /// What surrounds every station.
 #[derive(Clone, Debug, PartialEq)]
@@ -10,6 +10,7 @@ pub struct Surroundings {
     pub(crate) surfaces: Kelvin,
     pub(crate) pressure: Pascals,
     pub(crate) sun: WattsPerSquareMetre,
+    pub(crate) wind: MetresPerSecond,
 }
 
 impl Surroundings {
@@ -28,7 +29,17 @@ impl Surroundings {
             surfaces: ModelError::above_zero("surfaces", surfaces.value)?,
             pressure: ModelError::not_negative("pressure", pressure.value)?,
             sun: ModelError::not_negative("sun", sun.value)?,
+            wind: 0.0,
         })
+    }
+
+    /// The same surroundings with wind.
+    ///
+    /// # Errors
+    /// When its velocity is negative.
+    pub fn with_wind(mut self, wind: Velocity) -> Result<Self, ModelError> {
+        self.wind = ModelError::not_negative("wind", wind.value)?;
+        Ok(self)
     }
 }
 
@@ -353,10 +364,91 @@ pub enum Convection {
     None,
     /// A given coefficient.
     Coefficient(WattsPerSquareMetreKelvin),
-    /// Natural convection on a vertical plate or a tall vertical cylinder, of this height.
-    NaturalVertical(Metres),
-    /// Natural convection around a horizontal cylinder of this outer diameter.
-    NaturalHorizontalCylinder(Metres),
+    /// Natural convection.
+    Natural(NaturalSurface),
+    /// The wind of the surroundings.
+    Forced(ForcedSurface),
+    /// Both together.
+    Mixed {
+        /// How the air rises.
+        natural: NaturalSurface,
+        /// How the wind meets the face.
+        forced: ForcedSurface,
+    },
+}
+
+/// A surface in still air, with the length of its correlation.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum NaturalSurface {
+    /// A vertical plate or a tall vertical cylinder, of this height.
+    Vertical(Metres),
+    /// A plate that faces up, of this area over its perimeter.
+    FacingUp(Metres),
+    /// A plate that faces down, of this area over its perimeter.
+    FacingDown(Metres),
+    /// A horizontal cylinder of this outer diameter.
+    HorizontalCylinder(Metres),
+}
+
+/// A surface in the wind, with the length of its correlation.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum ForcedSurface {
+    /// A plate, along this length.
+    AlongPlate(Metres),
+    /// A cylinder of this outer diameter, across its axis.
+    AcrossCylinder(Metres),
+}
+
+impl NaturalSurface {
+    /// A vertical face of this height.
+    ///
+    /// # Errors
+    /// When it is not above zero.
+    pub fn vertical(height: Length) -> Result<Self, ModelError> {
+        Ok(Self::Vertical(ModelError::above_zero("length", height.value)?))
+    }
+
+    /// A face that looks up, of this area over its perimeter.
+    ///
+    /// # Errors
+    /// When it is not above zero.
+    pub fn facing_up(area_over_perimeter: Length) -> Result<Self, ModelError> {
+        Ok(Self::FacingUp(ModelError::above_zero("length", area_over_perimeter.value)?))
+    }
+
+    /// A face that looks down, of this area over its perimeter.
+    ///
+    /// # Errors
+    /// When it is not above zero.
+    pub fn facing_down(area_over_perimeter: Length) -> Result<Self, ModelError> {
+        Ok(Self::FacingDown(ModelError::above_zero("length", area_over_perimeter.value)?))
+    }
+
+    /// A horizontal cylinder of this outer diameter.
+    ///
+    /// # Errors
+    /// When it is not above zero.
+    pub fn horizontal_cylinder(diameter: Length) -> Result<Self, ModelError> {
+        Ok(Self::HorizontalCylinder(ModelError::above_zero("diameter", diameter.value)?))
+    }
+}
+
+impl ForcedSurface {
+    /// A plate of this length along the wind.
+    ///
+    /// # Errors
+    /// When it is not above zero.
+    pub fn along_plate(length: Length) -> Result<Self, ModelError> {
+        Ok(Self::AlongPlate(ModelError::above_zero("length", length.value)?))
+    }
+
+    /// A cylinder of this outer diameter, across the wind.
+    ///
+    /// # Errors
+    /// When it is not above zero.
+    pub fn across_cylinder(diameter: Length) -> Result<Self, ModelError> {
+        Ok(Self::AcrossCylinder(ModelError::above_zero("diameter", diameter.value)?))
+    }
 }
 
 impl Convection {
@@ -373,7 +465,7 @@ impl Convection {
     /// # Errors
     /// When it is not above zero.
     pub fn natural_vertical(height: Length) -> Result<Self, ModelError> {
-        Ok(Self::NaturalVertical(ModelError::above_zero("length", height.value)?))
+        Ok(Self::Natural(NaturalSurface::vertical(height)?))
     }
 
     /// Natural convection around a horizontal cylinder of this outer diameter.
@@ -381,7 +473,7 @@ impl Convection {
     /// # Errors
     /// When it is not above zero.
     pub fn natural_horizontal_cylinder(diameter: Length) -> Result<Self, ModelError> {
-        Ok(Self::NaturalHorizontalCylinder(ModelError::above_zero("diameter", diameter.value)?))
+        Ok(Self::Natural(NaturalSurface::horizontal_cylinder(diameter)?))
     }
 }
 

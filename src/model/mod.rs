@@ -14,7 +14,10 @@ mod station;
 mod table;
 
 pub use error::ModelError;
-pub use faces::{Convection, Coolant, CoolantPhases, Heating, HeatingModel, Idle, LogRows, Losses, OuterFace, Outside, Purge, Surroundings};
+pub use faces::{
+    Convection, Coolant, CoolantPhases, ForcedSurface, Heating, HeatingModel, Idle, LogRows, Losses, NaturalSurface, OuterFace, Outside, Purge,
+    Surroundings,
+};
 pub use layer::{Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
 pub use material::{Material, MaterialValues};
 pub use profile::{Phase, PhaseKind, Profile};

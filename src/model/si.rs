@@ -8,6 +8,8 @@ pub type KelvinDifference = f64;
 pub type Seconds = f64;
 /// Length, depth or thickness, m.
 pub type Metres = f64;
+/// Velocity, m/s.
+pub type MetresPerSecond = f64;
 /// Heat flux density, W/m².
 pub type WattsPerSquareMetre = f64;
 /// Heat transfer coefficient or conductance, W/(m²·K).

@@ -122,7 +122,7 @@ struct PartRow {
 }
 
 #[derive(Debug, Serialize, JsonSchema)]
-struct PhaseRow {
+pub(super) struct PhaseRow {
     /// What it is.
     #[schemars(extend("enum" = ["burn", "hold", "shutdown"]))]
     kind: &'static str,
@@ -141,7 +141,7 @@ struct PhaseRow {
 }
 
 impl PhaseRow {
-    fn new(phase: &PhaseCheck) -> Self {
+    pub(super) fn new(phase: &PhaseCheck) -> Self {
         Self {
             kind: phase.kind.word(),
             start_s: phase.start,
@@ -170,12 +170,7 @@ impl<'a> InputRow<'a> {
     fn new(input: &'a Input) -> Self {
         Self {
             path: &input.path,
-            value: match &input.value {
-                InputValue::Number(value) => ValueCell::Number(*value),
-                InputValue::Word(word) => ValueCell::Word(word),
-                InputValue::Switch(on) => ValueCell::Switch(*on),
-                InputValue::Table(points) => ValueCell::Table(points),
-            },
+            value: ValueCell::new(&input.value),
             unit: input.unit,
             from: &input.from,
         }
@@ -184,11 +179,22 @@ impl<'a> InputRow<'a> {
 
 #[derive(Debug, Serialize, JsonSchema)]
 #[serde(untagged)]
-enum ValueCell<'a> {
+pub(super) enum ValueCell<'a> {
     Number(f64),
     Word(&'a str),
     Switch(bool),
     Table(&'a [(f64, f64)]),
+}
+
+impl<'a> ValueCell<'a> {
+    pub(super) fn new(value: &'a InputValue) -> Self {
+        match value {
+            InputValue::Number(value) => Self::Number(*value),
+            InputValue::Word(word) => Self::Word(word),
+            InputValue::Switch(on) => Self::Switch(*on),
+            InputValue::Table(points) => Self::Table(points),
+        }
+    }
 }
 
 #[cfg(test)]

@@ -1,6 +1,7 @@
 //! From the checked tree to the model: what the form can't show. What is required depends on other keys here, names must name something, and each
 //! rule of the case file has its place.
 
+mod convection;
 mod coolant;
 mod faces;
 mod heating;
@@ -60,7 +61,7 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
     let allowance = lowering.allowance(case);
     let tolerance = lowering.tolerance(case);
     materials.finish(&mut lowering);
-    lowering.later(root, &stations);
+    lowering.later(root, &stations, profile.as_ref());
     let parts = ModelParts {
         title,
         surroundings: weather.surroundings?,

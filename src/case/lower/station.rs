@@ -10,7 +10,7 @@ use super::surroundings::Weather;
 use super::{InputValue, Lowering, Node, Spot, Table};
 use crate::case::names;
 use crate::diagnostics::Diagnostic;
-use crate::model::{Shape, Station, StationValues};
+use crate::model::{Resistance, Shape, Station, StationValues};
 
 /// A station, and what the rest of the case must know of it even when it has mistakes.
 pub(super) struct LoweredStation {
@@ -43,6 +43,16 @@ impl Section<'_> {
     /// Thickness of the whole wall, m.
     pub fn thickness(&self) -> Option<f64> {
         self.layers.iter().map(|layer| layer.thickness).sum()
+    }
+
+    /// Outer diameter of a cylinder, its gaps included, m; breadth of a bar at its far end.
+    pub fn outer_diameter(&self) -> Option<f64> {
+        let gap = |layer: &LoweredLayer| match layer.layer.as_ref().and_then(|layer| layer.joint.as_ref()?.resistance.as_ref()) {
+            Some(Resistance::Gap(gap)) => gap.width,
+            _ => 0.0,
+        };
+        let gaps: f64 = self.layers.iter().map(gap).sum();
+        Some(self.inner_diameter? + 2.0 * (self.thickness()? + gaps))
     }
 
     pub fn path_of(&self, key: &str) -> String {

@@ -1,6 +1,6 @@
 //! [surroundings] and [start].
 
-use super::quantities::{flux, pressure, temperature};
+use super::quantities::{flux, pressure, temperature, velocity};
 use super::{Lowering, Spot, Table};
 use crate::model::Surroundings;
 use crate::units::Kind;
@@ -14,6 +14,8 @@ pub(super) struct Weather {
     pub vacuum: bool,
     /// Whether the sun shines.
     pub sun: bool,
+    /// Wind, m/s; `None`: not given.
+    pub wind: Option<f64>,
 }
 
 /// Standard atmosphere, Pa.
@@ -29,19 +31,20 @@ impl Lowering<'_> {
             None => None,
         };
         let absolute = self.number_or(table, "pressure", path, ATMOSPHERE, Kind::Pressure);
-        let _ = self.number_or(table, "wind", path, 0.0, Kind::Velocity);
+        let wind = self.number_or(table, "wind", path, 0.0, Kind::Velocity);
         let sun = self.number_or(table, "sun", path, 0.0, Kind::HeatFlux);
         let spot = case.node("surroundings").map(|node| node.spot.clone());
-        let parts = air.zip(surfaces).zip(absolute).zip(sun).zip(spot);
-        let surroundings = parts.and_then(|((((air, surfaces), absolute), sun), spot)| {
+        let parts = air.zip(surfaces).zip(absolute).zip(sun).zip(wind).zip(spot);
+        let surroundings = parts.and_then(|(((((air, surfaces), absolute), sun), wind), spot)| {
             let built = Surroundings::new(temperature(air), temperature(surfaces), pressure(absolute), flux(sun));
-            self.accept(built, &spot)
+            self.accept(built.and_then(|built| built.with_wind(velocity(wind))), &spot)
         });
         Weather {
             surroundings,
             air,
             vacuum: absolute == Some(0.0),
             sun: sun.is_some_and(|sun| sun > 0.0),
+            wind: wind.filter(|_| table.is_some_and(|table| table.has("wind"))),
         }
     }
 
