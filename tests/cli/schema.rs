@@ -31,6 +31,8 @@ const UNSEEN_CODES: &[(&str, &str)] = &[
     ("unknown-path", "a path through the whole case"),
     ("unknown-place", "a name given elsewhere"),
     ("unknown-station", "a name given elsewhere"),
+    ("unknown-profile", "a name built in, or a path"),
+    ("unknown-value", "a name given in another file"),
     ("vacuum", "another key decides"),
     ("wind-unused", "another key decides"),
 ];
@@ -45,6 +47,10 @@ const UNSEEN_CASES: &[(&str, &str)] = &[
     ("missing-orientation", "required because of another key"),
     ("missing-solar-absorptivity", "required because of another key"),
     ("missing-view-of-a-cylinder", "required because of another key"),
+    ("profile-count-not-whole", "the kind of value that is due depends on the profile"),
+    ("profile-value-in-another-unit", "the unit that is due depends on the profile"),
+    ("profile-value-without-unit", "the unit that is due depends on the profile"),
+    ("spread-of-a-profile-value-in-another-unit", "the unit that is due depends on a path"),
     ("spread-without-sigmas", "required because of another key"),
     ("touch-longer-than-the-table", "the size of a value with a unit"),
     ("variant-in-another-unit", "the unit that is due depends on a path"),
@@ -117,9 +123,9 @@ fn document(path: &Path) -> Result<Value, Box<dyn Error>> {
 #[test]
 fn every_shipped_case_is_accepted() -> Outcome {
     let validator = Validator::case()?;
-    let files = cases("examples")?;
-    assert!(files.len() >= 4);
-    for file in files {
+    let (examples, starters) = (cases("examples")?, cases("profiles/starters")?);
+    assert!(examples.len() >= 4 && starters.len() >= 4);
+    for file in examples.iter().chain(&starters) {
         validator
             .check(&document(&file)?)
             .map_err(|error| format!("{}: {error}", file.display()))?;
@@ -222,6 +228,10 @@ fn what_the_program_writes_is_accepted() -> Outcome {
         document["materials"][0]["confidence"] = "certain".into();
         assert!(validator.check(&document).is_err());
     }
+    let mut profiles = printed(&["profiles", "--json"])?;
+    validator.check(&profiles).map_err(|error| format!("profiles: {error}"))?;
+    profiles["profiles"][0]["phases"][0]["kind"] = "pause".into();
+    assert!(validator.check(&profiles).is_err());
     Ok(())
 }
 
