@@ -132,6 +132,8 @@ pub struct Wall {
     pub heating: Option<Heating>,
     pub idle: Idle,
     pub outer: OuterFace,
+    /// What the sides of a bar lose, layer by layer.
+    pub sides: Vec<Losses>,
     pub start: f64,
     pub ambient: f64,
     /// Radiating surfaces, where they are not as warm as the air.
@@ -153,6 +155,7 @@ impl Wall {
             heating: None,
             idle: idle_without_loss()?,
             outer: insulated(),
+            sides: Vec::new(),
             start: 300.0,
             ambient: 300.0,
             surfaces: None,
@@ -172,6 +175,9 @@ impl Wall {
             idle: self.idle,
             outer: self.outer,
         })?;
+        if !self.sides.is_empty() {
+            station = station.with_sides(self.sides)?;
+        }
         for (index, depth) in self.probes.iter().enumerate() {
             station = station.with_probe(format!("P{index}"), metres(*depth), None, seconds(0.0))?;
         }

@@ -18,7 +18,7 @@ pub use faces::{
     Convection, Coolant, CoolantPhases, ForcedSurface, Heating, HeatingModel, Idle, LogRows, Losses, NaturalSurface, OuterFace, Outside, Purge,
     Surroundings,
 };
-pub use layer::{Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
+pub use layer::{CrossSection, Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
 pub use material::{Material, MaterialValues};
 pub use profile::{Phase, PhaseKind, Profile};
 pub use question::{Allowance, Place, Wait};

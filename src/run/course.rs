@@ -212,7 +212,7 @@ impl Moment<'_> {
         }
     }
 
-    /// Flux into the hot face, and out of the outer face per area of that face, at θ.
+    /// Flux into the hot face, and out of the outer face per area of that face (a bar: sides and far end, per section), at θ.
     pub fn fluxes(&self, theta: f64) -> (WattsPerSquareMetre, WattsPerSquareMetre) {
         let share = self.step.from + theta * (self.step.to - self.step.from);
         self.wall.face_fluxes(0, share, |node| self.step.value(node, theta)[0])

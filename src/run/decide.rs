@@ -1,7 +1,7 @@
 //! When the last phase has decided everything: where it leads, and whether anything can still change.
 
 use super::{Moment, Quantity, Watcher};
-use crate::model::{Convection, Kelvin, Outside, Place, Station, Surroundings};
+use crate::model::{Convection, Kelvin, Losses, Outside, Place, Station, Surroundings};
 use crate::wall::{Equilibrium, Forcing, Over, equilibrium};
 
 /// A level that a wall at rest can't be told from, K: from above, nothing comes down to its own surroundings.
@@ -212,19 +212,25 @@ fn sources(station: &Station, surroundings: &Surroundings, at_rest: &Forcing) ->
         (Outside::Fixed(temperature), _) => sources.push(*temperature),
         (Outside::Adiabatic, _) => {}
         (Outside::Open(_), Over::Coolant { temperature, .. }) => sources.push(temperature),
-        (Outside::Open(losses), Over::Losses) => {
-            if losses.convection != Convection::None {
-                sources.push(surroundings.air);
-            }
-            if losses.emissivity.is_some() {
-                sources.push(surroundings.surfaces);
-            }
-            if losses.solar_absorptivity * surroundings.sun > 0.0 {
-                sources.push(f64::INFINITY);
-            }
-        }
+        (Outside::Open(losses), Over::Losses) => loss_sources(losses, surroundings, &mut sources),
+    }
+    for side in &station.sides {
+        loss_sources(side, surroundings, &mut sources);
     }
     let low = sources.iter().copied().reduce(f64::min)?;
     let high = sources.iter().copied().reduce(f64::max)?;
     Some((low, high))
+}
+
+/// What acts by the losses of a face.
+fn loss_sources(losses: &Losses, surroundings: &Surroundings, sources: &mut Vec<Kelvin>) {
+    if losses.convection != Convection::None {
+        sources.push(surroundings.air);
+    }
+    if losses.emissivity.is_some() {
+        sources.push(surroundings.surfaces);
+    }
+    if losses.solar_absorptivity * surroundings.sun > 0.0 {
+        sources.push(f64::INFINITY);
+    }
 }
