@@ -167,8 +167,28 @@ impl Wall {
     }
 
     pub fn model(self) -> Result<Model, ModelError> {
+        Model::new(self.parts("wall")?)
+    }
+
+    /// This wall and another one under its profile and surroundings; both keep their waits.
+    pub fn beside(self, other: Self, name: &str) -> Result<Model, ModelError> {
+        let mut parts = self.parts("wall")?;
+        for (index, (place, below)) in other.waits.iter().enumerate() {
+            parts.waits.push(Wait::new(format!("W{index}"), 1, *place, temperature(*below))?);
+        }
+        parts.stations.extend(other.parts(name)?.stations);
+        Model::new(parts)
+    }
+
+    /// Other stations under this wall's profile and surroundings.
+    pub fn with_stations(self, stations: Vec<Station>) -> Result<Model, ModelError> {
+        let parts = self.parts("wall")?;
+        Model::new(ModelParts { stations, ..parts })
+    }
+
+    fn parts(self, name: &str) -> Result<ModelParts, ModelError> {
         let mut station = Station::new(StationValues {
-            name: "wall".into(),
+            name: name.into(),
             shape: self.shape,
             layers: self.layers,
             heating: self.heating,
@@ -187,7 +207,7 @@ impl Wall {
             .enumerate()
             .map(|(index, (place, below))| Wait::new(format!("W{index}"), 0, *place, temperature(*below)));
         let waits = waits.collect::<Result<Vec<_>, _>>()?;
-        Model::new(ModelParts {
+        Ok(ModelParts {
             title: "check".into(),
             surroundings: Surroundings::new(
                 temperature(self.ambient),

@@ -180,7 +180,7 @@ pub enum EvenedOut {
 /// If the last burn went on for ever, everything of that phase held.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Steady {
-    /// There is none: no burn, a heating log, or nothing balances the heat.
+    /// There is none: no burn, a heating log, a hot end that follows another wall, or nothing balances the heat.
     None,
     /// There is one.
     At(SteadyState),

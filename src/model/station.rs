@@ -255,6 +255,14 @@ impl Station {
         self.distances().last().copied().unwrap_or(0.0) + self.layers.last().map_or(0.0, |layer| layer.thickness)
     }
 
+    /// The face of another station that the hot end follows, if it does.
+    pub fn followed(&self) -> Option<&super::Followed> {
+        match &self.heating.as_ref()?.model {
+            super::HeatingModel::Wall(followed) => Some(followed),
+            _ => None,
+        }
+    }
+
     /// What resists the heat between layer `index` and the next; `None`: perfect contact.
     pub(crate) fn resistance(&self, index: usize) -> Option<&Resistance> {
         self.layers[index].joint.as_ref().and_then(|joint| joint.resistance.as_ref())

@@ -8,6 +8,7 @@ mod contact;
 mod cylinder;
 mod estimate;
 mod fire;
+mod follow;
 mod lumped;
 mod multilayer;
 mod nonlinear;
