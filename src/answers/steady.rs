@@ -28,7 +28,7 @@ pub(super) fn steady(model: &Model, station_index: usize, grid: &Grid, settings:
     let logged = station
         .heating
         .as_ref()
-        .is_none_or(|heating| matches!(heating.model, HeatingModel::Log(_)));
+        .is_none_or(|heating| matches!(heating.model, HeatingModel::Log(_) | HeatingModel::Wall(_)));
     let segments = Timeline::of_endless_burn(model, station, burn.start);
     let Some(endless) = segments.last().filter(|_| !logged).map(|segment| segment.forcing) else {
         return Ok(Steady::None);

@@ -1,7 +1,7 @@
 //! Drives one wall through its segments.
 
 use super::Segment;
-use crate::model::{Kelvin, PhaseKind, Seconds, Station, Surroundings, WattsPerSquareMetre};
+use crate::model::{Kelvin, ModelError, PhaseKind, Seconds, Station, Surroundings, WattsPerSquareMetre};
 use crate::solve::{Flow, Integrator, Settings, Slot, SolveError, Step};
 use crate::wall::{Grid, NodeMap, Wall};
 use std::sync::atomic::{AtomicBool, Ordering};
@@ -20,6 +20,14 @@ pub enum RunError {
         hottest: Kelvin,
         /// What the integrator says.
         source: SolveError,
+    },
+    /// The face that a hot end follows is not known.
+    #[error("station \"{station}\" follows a face whose course could not be had: {source}")]
+    Followed {
+        /// The station that follows.
+        station: String,
+        /// What was wrong with it.
+        source: ModelError,
     },
     /// Somebody asked to stop.
     #[error("interrupted")]
@@ -212,7 +220,7 @@ impl Moment<'_> {
         }
     }
 
-    /// Flux into the hot face, and out of the outer face per area of that face, at θ.
+    /// Flux into the hot face, and out of the outer face per area of that face (a bar: sides and far end, per section), at θ.
     pub fn fluxes(&self, theta: f64) -> (WattsPerSquareMetre, WattsPerSquareMetre) {
         let share = self.step.from + theta * (self.step.to - self.step.from);
         self.wall.face_fluxes(0, share, |node| self.step.value(node, theta)[0])

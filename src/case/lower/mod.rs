@@ -4,6 +4,7 @@
 mod convection;
 mod coolant;
 mod faces;
+mod follow;
 mod heating;
 mod heating_log;
 mod joint;
@@ -57,6 +58,7 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
     let profile = lowering.profile(case);
     let stations = lowering.stations(case, &weather, profile.as_ref(), &mut materials);
     lowering.wind(case);
+    lowering.followed_stations(case);
     let waits = lowering.waits(case, &stations);
     let allowance = lowering.allowance(case);
     let tolerance = lowering.tolerance(case);
