@@ -9,6 +9,7 @@ mod layer;
 mod material;
 mod profile;
 mod question;
+mod readings;
 mod si;
 mod station;
 mod table;
@@ -21,6 +22,7 @@ pub use faces::{
 pub use layer::{Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
 pub use material::{Material, MaterialValues};
 pub use profile::{Phase, PhaseKind, Profile};
+pub use readings::Readings;
 pub use question::{Allowance, Place, Wait};
 pub use si::*;
 pub use station::{Probe, Shape, Station, StationValues};

@@ -5,7 +5,7 @@ use super::cautions::cautions_of_run;
 use super::figures::Units;
 use super::findings::warnings_of_run;
 use crate::answers::{
-    EvenedOut, JointAnswer, LayerAnswer, LimitAnswer, PlaceAnswer, ProbeAnswer, RunAnswers, StationAnswers, Steady, Verdict, WaitAnswer, WaitState,
+    EvenedOut, JointAnswer, LayerAnswer, LimitAnswer, LogAnswer, PlaceAnswer, ProbeAnswer, RunAnswers, StationAnswers, Steady, Verdict, WaitAnswer, WaitState,
 };
 use crate::case::{Case, CaseFile};
 use crate::diagnostics::Notice;
@@ -128,8 +128,7 @@ struct StationRow<'a> {
     outer_face: PlaceRow,
     probes: Vec<ProbeRow<'a>>,
     soak_back: SoakBackRow,
-    /// Differences against a log; none yet.
-    log: Option<()>,
+    log: Option<Vec<LogRow<'a>>>,
     evened_out_s: Option<f64>,
     evened_out_state: &'static str,
     steady: SteadyRow,
@@ -160,7 +159,10 @@ impl<'a> StationRow<'a> {
                 last_peak_s: station.soak_back.last_peak.map(|(time, _)| time),
                 last_peak_depth_m: station.soak_back.last_peak.map(|(_, depth)| depth),
             },
-            log: None,
+            log: station
+                .log
+                .as_ref()
+                .map(|rows| rows.iter().map(|row| LogRow::new(&station.name, row)).collect()),
             evened_out_s,
             evened_out_state,
             steady: SteadyRow::new(&station.steady),
@@ -220,6 +222,30 @@ impl PlaceRow {
             time_over_limit_s: limit.map(|limit| limit.time_over),
             allowed_over_s: limit.map(|limit| limit.allowed_over),
             kept: limit.map(|limit| limit.kept),
+        }
+    }
+}
+
+/// Differences are computed − read.
+#[derive(Debug, Serialize)]
+struct LogRow<'a> {
+    station: &'a str,
+    probe: &'a str,
+    #[serde(rename = "largest_difference_K")]
+    largest_difference: Option<f64>,
+    at_s: Option<f64>,
+    #[serde(rename = "end_difference_K")]
+    end_difference: Option<f64>,
+}
+
+impl<'a> LogRow<'a> {
+    fn new(station: &'a str, row: &'a LogAnswer) -> Self {
+        Self {
+            station,
+            probe: &row.probe,
+            largest_difference: row.largest.map(|point| point.difference()),
+            at_s: row.largest.map(|point| point.time),
+            end_difference: row.end.map(|point| point.difference()),
         }
     }
 }

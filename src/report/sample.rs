@@ -261,7 +261,8 @@ pub(super) fn answers() -> RunAnswers {
                 peak_true: 460.36,
             },
         ],
-        soak_back: SoakBack {
+        log: None,
+            soak_back: SoakBack {
             outer_face_rise: 131.14,
             outer_face_peak: 41.37,
             last_peak: Some((41.37, 0.01125)),
