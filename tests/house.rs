@@ -23,7 +23,7 @@ const ROOMS: [(&str, u8); 11] = [
 const EVERYWHERE: [&str; 4] = ["uom", "serde", "csv", "thiserror"];
 
 /// The one room of every other crate.
-const HOMES: [(&str, &str); 13] = [
+const HOMES: [(&str, &str); 14] = [
     ("annotate_snippets", "cli"),
     ("anstream", "cli"),
     ("anstyle", "report"),
@@ -31,6 +31,7 @@ const HOMES: [(&str, &str); 13] = [
     ("clap_complete", "cli"),
     ("clap_mangen", "cli"),
     ("ctrlc", "cli"),
+    ("schemars", "report"),
     ("serde_json", "report"),
     ("sha2", "case"),
     ("tempfile", "cli"),

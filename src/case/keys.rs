@@ -175,7 +175,9 @@ pub(super) const PHASES: &[&str] = &["burn", "hold", "shutdown"];
 pub(super) const PLACES: &[&str] = &["hot-face", "outer-face", "everywhere"];
 
 fn materials() -> Vec<&'static str> {
-    library::names().collect()
+    let mut names: Vec<_> = library::names().collect();
+    names.sort_unstable();
+    names
 }
 
 fn places() -> Vec<&'static str> {
@@ -836,7 +838,7 @@ static TOUCH: Section = Section {
 };
 
 pub(super) const DENSITY: Expect = Expect::Quantity(Kind::Density, POSITIVE.within(1e-3, 1e5).odd(0.5, 25_000.0));
-pub(super) const HEAT_CAPACITY: Expect = Expect::Property(Kind::HeatCapacity, POSITIVE.within(1e-3, 1e7).odd(50.0, 20_000.0));
+pub(super) const HEAT_CAPACITY: Expect = Expect::Property(Kind::HeatCapacity, POSITIVE.within(1e-3, 1e7).odd(5.0, 20_000.0));
 pub(super) const CONDUCTIVITY: Expect = Expect::Property(Kind::Conductivity, POSITIVE.within(1e-6, 1e6).odd(0.005, 3000.0));
 pub(super) const EMISSIVITY: Expect = Expect::OneOf(&[Expect::Property(Kind::Number, SHARE), Expect::Section(&EMISSIVITIES)]);
 
@@ -1003,7 +1005,11 @@ static FIT: Section = Section {
     title: "[fit]",
     keys: &[
         // fit needs it; a run beside a log does not.
-        key("free", "The inputs that may be calibrated; a run with --log does without.", Expect::Sections(&FREE)),
+        key(
+            "free",
+            "The inputs that may be calibrated; a run with --log does without.",
+            Expect::Sections(&FREE),
+        ),
         required(
             "time",
             "The log's time column; its zero is the start of the profile, unless offset is given.",

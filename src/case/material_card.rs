@@ -4,6 +4,7 @@ use super::library;
 use super::lower::{NEEDED, PROPERTIES, kind_of, property, said};
 use super::suggest;
 use super::tree::{Node, Table as Keys, Value};
+use crate::diagnostics::{Diagnostic, Diagnostics};
 use crate::model::{Kelvin, LimitKind, Table};
 use uom::si::f64::{Ratio, SpecificHeatCapacity, ThermalConductivity};
 use uom::si::ratio::ratio;
@@ -127,32 +128,11 @@ fn share(node: &Node) -> Option<Table> {
     property(node, Ratio::new::<ratio>)?.ok()
 }
 
-/// Why there is no card.
-#[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
-pub enum MaterialError {
-    /// No built-in material has this name.
-    #[error("the material \"{name}\" is not built in")]
-    Unknown {
-        /// As asked for.
-        name: String,
-        /// What was most likely meant.
-        help: Vec<String>,
-    },
-    /// A shipped card can't be read: a fault of the program.
-    #[error("the built-in material \"{name}\" is damaged: {why}")]
-    Damaged {
-        /// Its name.
-        name: &'static str,
-        /// What is wrong.
-        why: String,
-    },
-}
-
 /// Every built-in material, by name.
 ///
 /// # Errors
-/// When a card is damaged.
-pub fn material_cards() -> Result<Vec<MaterialCard>, MaterialError> {
+/// When a card is damaged, which is a fault of the program.
+pub fn material_cards() -> Result<Vec<MaterialCard>, Diagnostics> {
     let mut cards = library::names().map(read).collect::<Result<Vec<_>, _>>()?;
     cards.sort_by_key(|card| card.name);
     Ok(cards)
@@ -162,23 +142,39 @@ pub fn material_cards() -> Result<Vec<MaterialCard>, MaterialError> {
 ///
 /// # Errors
 /// When there is none, with the nearest names, or its card is damaged.
-pub fn material_card(name: &str) -> Result<MaterialCard, MaterialError> {
-    library::names().find(|known| *known == name).map_or_else(|| Err(unknown(name)), read)
+pub fn material_card(name: &str) -> Result<MaterialCard, Diagnostics> {
+    let known = library::names().find(|known| *known == name);
+    known.map_or_else(|| Err(alone(unknown(name))), read)
 }
 
-fn read(name: &'static str) -> Result<MaterialCard, MaterialError> {
-    let damaged = |why: String| MaterialError::Damaged { name, why };
-    let card = library::card(name).ok_or_else(|| damaged("it is missing".to_owned()))?.map_err(damaged)?;
-    MaterialCard::read(name, &card.table).ok_or_else(|| damaged("a value is missing".to_owned()))
+fn alone(found: Diagnostic) -> Diagnostics {
+    Diagnostics {
+        sources: Vec::new(),
+        list: vec![found],
+    }
 }
 
-fn unknown(name: &str) -> MaterialError {
-    let mut help: Vec<String> = suggest::nearest(name, library::names()).map(suggest::did_you_mean).into_iter().collect();
+fn read(name: &'static str) -> Result<MaterialCard, Diagnostics> {
+    let damaged = |why: &str| {
+        alone(Diagnostic::error(
+            "library",
+            format!("the built-in material \"{name}\" is damaged: {why}"),
+        ))
+    };
+    let card = library::card(name)
+        .ok_or_else(|| damaged("it is missing"))?
+        .map_err(|why| damaged(&why))?;
+    MaterialCard::read(name, &card.table).ok_or_else(|| damaged("a value is missing"))
+}
+
+fn unknown(name: &str) -> Diagnostic {
+    let mut found = Diagnostic::error("unknown-material", format!("no built-in material is called \"{name}\""));
     let wanted = name.to_lowercase();
     let alike: Vec<_> = library::names().filter(|known| !wanted.is_empty() && known.contains(&wanted)).collect();
+    let nearest = suggest::nearest(name, library::names());
+    found.help.extend(nearest.map(suggest::did_you_mean));
     if !alike.is_empty() {
-        help.push(format!("names with \"{wanted}\" in them: {}", alike.join(", ")));
+        found = found.help(format!("names with \"{wanted}\" in them: {}", alike.join(", ")));
     }
-    help.push("\"soakdown materials\" lists them all; one of your own stands in [material.NAME] of the case".to_owned());
-    MaterialError::Unknown { name: name.to_owned(), help }
+    found.help("all of them: soakdown materials; one of your own stands in [material.NAME] of the case")
 }

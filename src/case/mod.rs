@@ -28,7 +28,7 @@ mod tests;
 
 pub use checked::{Case, CaseFile, Input, InputValue, LogColumn, LogFormat};
 pub use load::load;
-pub use test_log::read_log;
-pub use shipped::{ReadyProfile, ReadyValue, STARTERS, Starter, ready_profile, ready_profiles};
-pub use material_card::{Confidence, MaterialCard, MaterialError, Said, material_card, material_cards};
+pub use material_card::{Confidence, MaterialCard, Said, material_card, material_cards};
 pub use schema::{Schema, schema};
+pub use shipped::{ReadyProfile, ReadyValue, STARTERS, Starter, ready_profile, ready_profiles};
+pub use test_log::read_log;

@@ -100,20 +100,17 @@ pub struct Schema {
 
 /// The schema of the case file.
 pub fn schema() -> Schema {
-    let mut definitions = Vec::new();
+    let mut definitions = Named::default();
     let root = table(&CASE, &mut definitions);
     Schema {
         dialect: Some(DIALECT),
         identity: Some(IDENTITY),
         title: Some("soakdown case file".to_owned()),
         description: Some("One planning question: the wall, what heats it, what cools it, the time profile, the limits.".to_owned()),
-        definitions: Named(definitions.into_iter().map(|(section, schema)| (name_of(section), schema)).collect()),
+        definitions,
         ..root
     }
 }
-
-/// Sections seen so far.
-type Definitions = Vec<(&'static Section, Schema)>;
 
 /// A section's name among the definitions: its title without brackets and article.
 fn name_of(section: &Section) -> String {
@@ -122,23 +119,26 @@ fn name_of(section: &Section) -> String {
     bare.replace(' ', "-")
 }
 
-/// A reference to a section, which is added to the definitions when it is met first.
-fn reference(section: &'static Section, definitions: &mut Definitions) -> Schema {
-    if !definitions.iter().any(|known| std::ptr::eq(known.0, section)) {
+/// A reference to a definition, which is made when it is met first.
+fn reference(name: String, definitions: &mut Named, make: impl FnOnce(&mut Named) -> Schema) -> Schema {
+    if !definitions.0.iter().any(|known| known.0 == name) {
         // Stands there before its keys are looked at: a phase holds phases.
-        definitions.push((section, Schema::default()));
-        let schema = table(section, definitions);
-        if let Some(entry) = definitions.iter_mut().find(|known| std::ptr::eq(known.0, section)) {
-            entry.1 = schema;
-        }
+        let place = definitions.0.len();
+        definitions.0.push((name.clone(), Schema::default()));
+        let schema = make(definitions);
+        definitions.0[place].1 = schema;
     }
     Schema {
-        reference: Some(format!("#/$defs/{}", name_of(section))),
+        reference: Some(format!("#/$defs/{name}")),
         ..Schema::default()
     }
 }
 
-fn table(section: &'static Section, definitions: &mut Definitions) -> Schema {
+fn section(section: &'static Section, definitions: &mut Named) -> Schema {
+    reference(name_of(section), definitions, |definitions| table(section, definitions))
+}
+
+fn table(section: &'static Section, definitions: &mut Named) -> Schema {
     let properties = section.keys.iter().map(|key| (key.name.to_owned(), property(key, definitions)));
     Schema {
         kind: Some("object"),
@@ -149,7 +149,7 @@ fn table(section: &'static Section, definitions: &mut Definitions) -> Schema {
     }
 }
 
-fn property(key: &'static Key, definitions: &mut Definitions) -> Schema {
+fn property(key: &'static Key, definitions: &mut Named) -> Schema {
     let hint = hint(&key.expect);
     Schema {
         description: Some(if hint.is_empty() {
@@ -179,9 +179,9 @@ fn hint(expect: &Expect) -> String {
     }
 }
 
-fn value(expect: &'static Expect, definitions: &mut Definitions) -> Schema {
+fn value(expect: &'static Expect, definitions: &mut Named) -> Schema {
     match expect {
-        Expect::Quantity(kind, bounds) => quantity(*kind, *bounds),
+        Expect::Quantity(kind, bounds) => quantity(*kind, *bounds, definitions),
         Expect::Number(bounds) => number(*bounds),
         Expect::Version => Schema {
             only: Some(Literal::Whole(VERSION)),
@@ -206,14 +206,14 @@ fn value(expect: &'static Expect, definitions: &mut Definitions) -> Schema {
         },
         Expect::Name => name(),
         Expect::Property(kind, bounds) => Schema {
-            any_of: vec![single(*kind, *bounds), points(*kind, *bounds)],
+            any_of: vec![single(*kind, *bounds, definitions), points(*kind, *bounds, definitions)],
             ..Schema::default()
         },
         Expect::List(item) => list(value(item, definitions), None),
-        Expect::Section(section) => reference(section, definitions),
-        Expect::Sections(section) => list(reference(section, definitions), Some(1)),
-        Expect::Named(section) => Schema {
-            additional_properties: Some(Further::Such(Box::new(reference(section, definitions)))),
+        Expect::Section(keys) => section(keys, definitions),
+        Expect::Sections(keys) => list(section(keys, definitions), Some(1)),
+        Expect::Named(keys) => Schema {
+            additional_properties: Some(Further::Such(Box::new(section(keys, definitions)))),
             ..of_kind("object")
         },
         Expect::OneOf(choices) => Schema {
@@ -239,18 +239,23 @@ fn list(item: Schema, least: Option<usize>) -> Schema {
     }
 }
 
-fn quantity(kind: Kind, bounds: Bounds) -> Schema {
+fn quantity(kind: Kind, bounds: Bounds, definitions: &mut Named) -> Schema {
     // A temperature below 0 degC is above 0 K.
     let sign = if bounds.least >= 0.0 && kind != Kind::Temperature {
         Sign::NotNegative
     } else {
         Sign::Any
     };
-    Schema {
+    let words = kind.words().split_once(' ').map_or(kind.words(), |(_, words)| words).replace(' ', "-");
+    let name = match sign {
+        Sign::NotNegative => words,
+        Sign::Any => format!("{words}-of-any-sign"),
+    };
+    reference(name, definitions, |_| Schema {
         pattern: Some(kind.pattern(sign)),
         examples: kind.examples().iter().map(|unit| format!("5 {unit}")).collect(),
         ..of_kind("string")
-    }
+    })
 }
 
 fn number(bounds: Bounds) -> Schema {
@@ -288,14 +293,19 @@ fn name() -> Schema {
     }
 }
 
-fn single(kind: Kind, bounds: Bounds) -> Schema {
-    if kind == Kind::Number { number(bounds) } else { quantity(kind, bounds) }
+fn single(kind: Kind, bounds: Bounds, definitions: &mut Named) -> Schema {
+    if kind == Kind::Number {
+        number(bounds)
+    } else {
+        quantity(kind, bounds, definitions)
+    }
 }
 
 /// Pairs of temperature and value.
-fn points(kind: Kind, bounds: Bounds) -> Schema {
+fn points(kind: Kind, bounds: Bounds, definitions: &mut Named) -> Schema {
+    let temperature = quantity(Kind::Temperature, super::keys::POSITIVE, definitions);
     let pair = Schema {
-        prefix_items: vec![quantity(Kind::Temperature, super::keys::POSITIVE), single(kind, bounds)],
+        prefix_items: vec![temperature, single(kind, bounds, definitions)],
         min_items: Some(2),
         max_items: Some(2),
         ..of_kind("array")

@@ -27,7 +27,8 @@ pub fn read_log(case: &mut Case, path: &Path) -> Result<Vec<Readings>, Diagnosti
     let Some(readings) = readings.filter(|_| !findings.diagnostics.has_errors()) else {
         return Err(findings.diagnostics);
     };
-    case.notices.retain(|notice| !(notice.code == "section-unused" && notice.text.starts_with("[fit]")));
+    case.notices
+        .retain(|notice| !(notice.code == "section-unused" && notice.text.starts_with("[fit]")));
     case.notices.append(&mut findings.notices);
     Ok(readings)
 }
@@ -46,7 +47,10 @@ fn read(case: &mut Case, path: &Path, findings: &mut Findings) -> Option<Vec<Rea
         digest: digest::of(&[&bytes]),
     };
     let Ok(text) = String::from_utf8(bytes) else {
-        findings.nowhere(Diagnostic::error("not-text", format!("the log {name} is no UTF-8 text: a CSV file is due")));
+        findings.nowhere(Diagnostic::error(
+            "not-text",
+            format!("the log {name} is no UTF-8 text: a CSV file is due"),
+        ));
         return None;
     };
     let source = findings.add_source(name, text.as_str());
@@ -71,7 +75,10 @@ fn read(case: &mut Case, path: &Path, findings: &mut Findings) -> Option<Vec<Rea
         findings.notice("readings-before-start", text, None, None);
     }
     if late > 0 {
-        let text = format!("{} of the log later than 100 h after the start of the profile: not compared", plural(late, "row"));
+        let text = format!(
+            "{} of the log later than 100 h after the start of the profile: not compared",
+            plural(late, "row")
+        );
         findings.notice("readings-after-end", text, None, None);
     }
     let mut all = Vec::new();
@@ -98,10 +105,8 @@ fn read(case: &mut Case, path: &Path, findings: &mut Findings) -> Option<Vec<Rea
     }
     if all.iter().all(|readings| readings.points().is_empty()) && !findings.diagnostics.has_errors() {
         let message = "no row of the log falls on the profile: there is nothing to compare";
-        let found = Diagnostic::error("log-outside-run", message).label(format!(
-            "[fit] offset is {} s: the log's time at the start of the profile",
-            format.offset
-        ));
+        let found = Diagnostic::error("log-outside-run", message)
+            .label(format!("[fit] offset is {} s: the log's time at the start of the profile", format.offset));
         findings.at(&table.header.spot, found);
         return None;
     }
@@ -114,7 +119,9 @@ fn read(case: &mut Case, path: &Path, findings: &mut Findings) -> Option<Vec<Rea
 /// The case doesn't say which column is what: shows what could be written, with the names of this log and of this case.
 fn no_format(case: &Case, source: usize, text: &str, findings: &mut Findings) {
     let found = Diagnostic::error("missing-section", "the case has no [fit], which says how this log is read");
-    let Some(table) = CsvTable::parse(source, text, "time", findings) else { return };
+    let Some(table) = CsvTable::parse(source, text, "time", findings) else {
+        return;
+    };
     let probes = case.model.stations().iter();
     let probes: Vec<_> = probes
         .flat_map(|station| station.probes().iter().map(|probe| format!("{}/{}", station.name(), probe.name)))
@@ -146,7 +153,10 @@ fn find(table: &CsvTable, name: &str, whose: &str, findings: &mut Findings) -> O
     }
     let found = table.column(name);
     if found.is_none() {
-        let mut told = Diagnostic::error("missing-column", format!("the column \"{name}\", which {whose} of the case names, is not in this log"));
+        let mut told = Diagnostic::error(
+            "missing-column",
+            format!("the column \"{name}\", which {whose} of the case names, is not in this log"),
+        );
         told.help.extend(suggest::help(name, table.header.fields.iter().map(String::as_str)));
         if table.header.fields.len() == 1 && table.header.field(0).contains([';', '\t']) {
             told = told.help("the columns of a log are separated by commas, and decimals are written with a point");

@@ -51,6 +51,18 @@ Examples:
   soakdown check examples/heat-sink-chamber.toml
   soakdown check chamber.toml --wall \"800 K\" --set surroundings.air=\"40 degC\"";
 
+const MATERIALS_HELP: &str = "\
+Examples:
+  soakdown materials
+  soakdown materials copper
+  soakdown materials --find nickel --limit-above \"900 degC\"
+  soakdown materials --confidence high --json";
+
+const SCHEMA_HELP: &str = "\
+To have an editor complete, explain and check case files: soakdown schema > soakdown-case.json, and as the first line of a case
+  #:schema ./soakdown-case.json
+for an editor with a TOML language server that reads JSON Schema.";
+
 const RUN_HELP: &str = "\
 Examples:
   soakdown run examples/heat-sink-chamber.toml
@@ -91,6 +103,12 @@ pub enum Command {
     /// Prints the manual page, or writes those of all commands into a folder
     #[command(after_help = MAN_HELP)]
     Man(ManArguments),
+    /// What is built in: every material in a table, or one with its values, ranges, sources and notes
+    #[command(after_help = MATERIALS_HELP)]
+    Materials(MaterialsArguments),
+    /// The JSON Schema (2020-12) of the case file, or of the results
+    #[command(after_help = SCHEMA_HELP)]
+    Schema(SchemaArguments),
 }
 
 /// `soakdown new`.
@@ -162,6 +180,50 @@ pub struct RunArguments {
     /// What every answering command takes.
     #[command(flatten)]
     pub common: Common,
+}
+
+/// `soakdown materials`.
+#[derive(Debug, Args)]
+pub struct MaterialsArguments {
+    /// Show this one, with everything its card says
+    pub name: Option<String>,
+    /// Only those with this in their name or title
+    #[arg(long, value_name = "WORD", conflicts_with = "name")]
+    pub find: Option<String>,
+    /// Only those whose density, heat capacity and conductivity have at least this confidence
+    #[arg(long, value_name = "CONFIDENCE", value_enum, conflicts_with = "name")]
+    pub confidence: Option<ConfidenceChoice>,
+    /// Only those with a built-in limit of at least this, as in "900 degC"
+    #[arg(long, value_name = "TEMPERATURE", value_parser = wall, conflicts_with = "name")]
+    pub limit_above: Option<Quantity>,
+    /// Print one JSON document on standard output, and nothing else there
+    #[arg(long)]
+    pub json: bool,
+    /// Units on the screen; JSON stays in SI
+    #[arg(long, value_name = "UNITS", value_enum, default_value_t = UnitsChoice::Si)]
+    pub units: UnitsChoice,
+    /// Colour on the screen
+    #[arg(long, value_name = "WHEN", value_enum, default_value_t = ColorChoice::Auto)]
+    pub color: ColorChoice,
+}
+
+/// `soakdown schema`.
+#[derive(Debug, Args)]
+pub struct SchemaArguments {
+    /// The schema of the JSON documents instead: result.json, check.json, materials --json
+    #[arg(long)]
+    pub results: bool,
+}
+
+/// How far values may be trusted.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum ConfidenceChoice {
+    /// From a table of this very material
+    High,
+    /// Right for the kind of material
+    Medium,
+    /// Typical, from memory, or scattered
+    Low,
 }
 
 /// Options of every answering command.

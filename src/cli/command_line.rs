@@ -1,6 +1,7 @@
 //! The command as it would be typed again: what documents carry. Without `--out`, `--quiet` and `--color`, which change no answer.
 
-use super::arguments::{CheckArguments, Common, ProfilesArguments, RunArguments, UnitsChoice};
+use super::arguments::{CheckArguments, Common, MaterialsArguments, ProfilesArguments, RunArguments, UnitsChoice};
+use clap::ValueEnum;
 use std::path::Path;
 
 /// `soakdown check …`.
@@ -29,6 +30,27 @@ pub fn run_line(arguments: &RunArguments) -> String {
 pub fn profiles_line(arguments: &ProfilesArguments) -> String {
     let mut words = vec!["soakdown".to_owned(), "profiles".to_owned()];
     words.extend(arguments.name.as_deref().map(quoted));
+    if arguments.json {
+        words.push("--json".to_owned());
+    }
+    words.join(" ")
+}
+
+/// `soakdown materials …`.
+pub fn materials_line(arguments: &MaterialsArguments) -> String {
+    let mut words = vec!["soakdown".to_owned(), "materials".to_owned()];
+    words.extend(arguments.name.as_deref().map(quoted));
+    let confidence = arguments.confidence.and_then(|choice| choice.to_possible_value());
+    let options = [
+        ("--find", arguments.find.clone()),
+        ("--confidence", confidence.map(|choice| choice.get_name().to_owned())),
+        ("--limit-above", arguments.limit_above.as_ref().map(|limit| limit.text.clone())),
+    ];
+    for (option, value) in options {
+        if let Some(value) = value {
+            words.extend([option.to_owned(), quoted(&value)]);
+        }
+    }
     if arguments.json {
         words.push("--json".to_owned());
     }

@@ -9,12 +9,14 @@ mod failure;
 mod files;
 mod interrupt;
 mod man;
+mod materials;
 mod mistakes;
 mod new;
 mod printer;
 mod profiles;
 mod progress;
 mod run;
+mod schema;
 mod start;
 
 pub use start::start;

@@ -1,16 +1,18 @@
 //! From the words of the command line to a command, and from its end to an exit status.
 
-use super::arguments::{Arguments, Command, Common, UnitsChoice};
+use super::arguments::{Arguments, ColorChoice, Command, Common, UnitsChoice};
 use super::check::check;
 use super::completions::completions;
 use super::exit::ExitStatus;
 use super::failure::Failure;
 use super::man::man;
+use super::materials::materials;
 use super::mistakes::{plain_error, rendered};
 use super::new::new;
 use super::printer::Printer;
 use super::profiles::profiles;
 use super::run::run;
+use super::schema::schema;
 use clap::Parser;
 use clap::error::ErrorKind;
 use soakdown::report::Units;
@@ -22,13 +24,17 @@ pub fn start(words: impl Iterator<Item = OsString>) -> ExitStatus {
         Ok(arguments) => arguments,
         Err(told) => return usage(&told),
     };
-    let common = match &arguments.command {
-        Command::Check(check) => Some(&check.common),
-        Command::Run(run) => Some(&run.common),
-        Command::New(_) | Command::Profiles(_) | Command::Completions(_) | Command::Man(_) => None,
+    let (color, quiet) = match &arguments.command {
+        Command::Check(check) => (check.common.color, check.common.quiet),
+        Command::Run(run) => (run.common.color, run.common.quiet),
+        Command::Materials(materials) => (materials.color, false),
+        Command::New(_) | Command::Profiles(_) => (ColorChoice::Auto, false),
+        Command::Completions(_) | Command::Man(_) | Command::Schema(_) => (ColorChoice::Never, false),
     };
-    let printer = common.map_or_else(Printer::plain, |common| Printer::new(common.color, common.quiet));
+    let printer = Printer::new(color, quiet);
     let result = match &arguments.command {
+        Command::Materials(arguments) => materials(arguments, printer),
+        Command::Schema(arguments) => schema(arguments, printer),
         Command::Check(arguments) => check(arguments, printer),
         Command::Run(arguments) => run(arguments, printer),
         Command::New(arguments) => new(arguments, printer),
@@ -70,7 +76,12 @@ fn refusal(diagnostics: &soakdown::diagnostics::Diagnostics) -> String {
 
 /// Units of the screen.
 pub fn units(common: &Common) -> Units {
-    match common.units {
+    units_of(common.units)
+}
+
+/// Units of the screen.
+pub fn units_of(choice: UnitsChoice) -> Units {
+    match choice {
         UnitsChoice::Si => Units::Si,
         UnitsChoice::Us => Units::Us,
     }

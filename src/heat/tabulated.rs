@@ -23,9 +23,7 @@ impl TabulatedCoefficient {
         let last = FARTHEST.powf(1.0 / 6.0);
         let edge = |sign: f64, index: usize| {
             let root = last * index as f64 / CELLS as f64;
-            // The coefficient has no slope against the difference at zero, but one against its root: take it just beside.
-            let difference = root.max(1e-2 * last / CELLS as f64).powi(6);
-            let face = (ambient + sign * difference).max(1.0);
+            let face = (ambient + sign * root.powi(6)).max(1.0);
             let flux = flux(face);
             let difference = face - ambient;
             let coefficient = flux.value / difference;
@@ -33,9 +31,12 @@ impl TabulatedCoefficient {
             [coefficient, by_difference * sign * 6.0 * root.powi(5)]
         };
         let side = |sign: f64| {
-            let mut edges: Vec<[f64; 2]> = (0..=CELLS).map(|index| edge(sign, index)).collect();
-            // At zero: the slope that makes the first cell's parabola.
-            edges[0][1] = 2.0 * (edges[1][0] - edges[0][0]) * CELLS as f64 / last - edges[1][1];
+            // At zero the difference says nothing; a parabola through the next two edges does, and is what the correlations are there.
+            let mut edges: Vec<[f64; 2]> = (1..=CELLS).map(|index| edge(sign, index)).collect();
+            let width = last / CELLS as f64;
+            let ([value, slope], [_, next_slope]) = (edges[0], edges[1]);
+            let bend = (next_slope - slope) / width;
+            edges.insert(0, [value - slope * width + 0.5 * bend * width * width, slope - bend * width]);
             edges
         };
         Self {
@@ -89,6 +90,15 @@ mod tests {
                 }
             }
         }
+    }
+
+    #[test]
+    fn a_face_as_warm_as_the_air_loses_nothing_and_has_a_slope() {
+        let table = TabulatedCoefficient::new(293.15, |face| vertical_plate(face, 293.15, 101_325.0, 0.3));
+        let still = table.flux(293.15);
+        assert_eq!(still.value, 0.0);
+        // Still air alone: 0.825² k/L.
+        assert!((still.slope / (0.825 * 0.825 * 0.025_87 / 0.3) - 1.0).abs() < 0.01, "{still:?}");
     }
 
     #[test]

@@ -22,8 +22,8 @@ pub use faces::{
 pub use layer::{Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
 pub use material::{Material, MaterialValues};
 pub use profile::{Phase, PhaseKind, Profile};
-pub use readings::Readings;
 pub use question::{Allowance, Place, Wait};
+pub use readings::Readings;
 pub use si::*;
 pub use station::{Probe, Shape, Station, StationValues};
 pub use table::{Table, TablePoint};

@@ -17,12 +17,7 @@ impl Readings {
     ///
     /// # Errors
     /// When a time is negative or not after the one before, a temperature is not above absolute zero, or the deviation is negative.
-    pub fn new(
-        station: usize,
-        probe: usize,
-        noise: TemperatureInterval,
-        points: &[(Time, ThermodynamicTemperature)],
-    ) -> Result<Self, ModelError> {
+    pub fn new(station: usize, probe: usize, noise: TemperatureInterval, points: &[(Time, ThermodynamicTemperature)]) -> Result<Self, ModelError> {
         let noise = ModelError::not_negative("noise", noise.value)?;
         let mut checked: Vec<(Seconds, Kelvin)> = Vec::with_capacity(points.len());
         for (time, reading) in points {

@@ -130,7 +130,7 @@ fn peaks_table(answers: &RunAnswers, station: &StationAnswers, figures: Figures)
         let (limit, whose, margin, kept) = match &place.limit {
             None => ("none".into(), Cell::from(""), "".into(), Cell::from("")),
             Some(limit) => (
-                figures.given(limit.limit),
+                figures.limit(limit.limit),
                 Cell::from(whose(limit)),
                 figures.margin(limit.margin),
                 kept(limit),
@@ -264,7 +264,19 @@ fn log_part(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units) {
         Align::Right,
         Align::Right,
     ]);
-    table.row(["probe", "largest", "when (clock)", "at the end", "end (clock)", "rms", "noise", "readings"].map(|head| Cell::styled(BOLD, head)));
+    table.row(
+        [
+            "probe",
+            "largest",
+            "when (clock)",
+            "at the end",
+            "end (clock)",
+            "rms",
+            "noise",
+            "readings",
+        ]
+        .map(|head| Cell::styled(BOLD, head)),
+    );
     for station in &answers.stations {
         let figures = Figures::new(units, station.numerical.estimated_error);
         for row in station.log.iter().flatten() {

@@ -21,7 +21,7 @@ impl Settings {
     pub fn with_tolerance(tolerance: f64) -> Self {
         Self {
             tolerance,
-            growth: 8.0,
+            growth: 10.0,
             safety: 0.9,
             most_steps: 1_000_000,
         }
@@ -226,10 +226,10 @@ impl<const L: usize> Integrator<L> {
         }
     }
 
-    /// The first step after a jump: short enough that no unknown moves by more than twenty tolerances, by its rate (the jump of the flux into the
+    /// The first step after a jump: short enough that no unknown moves by more than thirty tolerances, by its rate (the jump of the flux into the
     /// outermost cell) or by the growth of its rate.
     fn first_step<S: System<L>>(&self, system: &S, settings: &Settings, length: Slot<L>, depends_on_time: bool) -> Result<f64, SolveError> {
-        let allowed = 20.0 * settings.tolerance;
+        let allowed = 30.0 * settings.tolerance;
         let mut size: f64 = 1.0;
         let weights = system.weights();
         for (i, weight) in weights.iter().enumerate() {

@@ -1,7 +1,7 @@
 //! Regular expressions of quantities, for the schema: what an editor can see of the grammar.
 
+use super::Kind;
 use super::factors::{FACTORS, READ_AS};
-use super::{Factor, Kind};
 
 /// Which numbers may stand before a unit.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -13,25 +13,18 @@ pub enum Sign {
 }
 
 impl Kind {
-    /// A regular expression (in the part of the syntax that all dialects share) that every text of this kind matches. It knows the numbers and
-    /// the names of the units, and the dimension of a unit of one factor; it can't add up the dimensions of a unit of several.
+    /// A regular expression, in the part of the syntax that all dialects share, that every text of this kind matches: a number, then a unit of one
+    /// factor that fits, or anything made of several. It is kept short because editors show it.
     pub fn pattern(self, sign: Sign) -> String {
-        let names = |fits: &dyn Fn(&Factor) -> bool| {
-            let read_as = READ_AS.iter().filter_map(|(written, name)| Some((*written, Factor::named(name)?)));
-            let named = FACTORS.iter().map(|factor| (factor.name, factor)).chain(read_as);
-            let fitting: Vec<_> = named.filter(|(_, factor)| fits(factor)).map(|(name, _)| name).collect();
-            fitting.join("|")
-        };
-        let all = format!("({})", names(&|_| true));
-        let exponent = "-?[1-9]";
-        let more = format!(r"(\s*[./]\s*{all}({exponent})?)");
-        let compound = format!("{all}({exponent}{more}*|{more}+)");
-        let alone = names(&|factor| factor.dimension == self.dimension());
-        let unit = if alone.is_empty() { compound } else { format!("({alone}|{compound})") };
+        let fits = |name: &str| FACTORS.iter().any(|factor| factor.name == name && factor.dimension == self.dimension());
+        let other_spellings = READ_AS.iter().filter(|pair| fits(pair.1)).map(|pair| pair.0);
+        let mut units: Vec<&str> = FACTORS.iter().map(|factor| factor.name).filter(|name| fits(name)).collect();
+        units.extend(other_spellings);
+        units.push(r"[A-Za-z°%]+(-?[1-9]|\s*[./]\s*[A-Za-z°%]+)+");
         let sign = match sign {
             Sign::Any => "[+-]?",
             Sign::NotNegative => r"\+?",
         };
-        format!(r"^\s*{sign}([0-9]+(\.[0-9]+)?|\.[0-9]+)([eE][+-]?[0-9]+)?\s*{unit}\s*$")
+        format!(r"^\s*{sign}[0-9]*\.?[0-9]+([eE][+-]?[0-9]+)?\s*({})\s*$", units.join("|"))
     }
 }

@@ -2,9 +2,9 @@
 
 use super::curve::Share;
 use super::{Curve, Forcing, Grid, NodeMap, Over};
-use crate::heat::{convected, gap_flux, grey_exchange};
+use crate::heat::{TabulatedCoefficient, convected, gap_flux, grey_exchange};
 use crate::model::{
-    Convection, Gap, Kelvin, Losses, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table, WattsPerSquareMetre,
+    Convection, Gap, Kelvin, Losses, NaturalSurface, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table, WattsPerSquareMetre,
 };
 use crate::solve::{Slot, System, Tridiagonal};
 use std::ops::RangeInclusive;
@@ -51,6 +51,8 @@ struct Faces {
     surroundings: Surroundings,
     idle_emissivity: Table,
     outside: Outside,
+    /// Its convection as a table, where that is smooth.
+    natural: Option<TabulatedCoefficient>,
     /// Outer area per hot-face area.
     outer_area: f64,
 }
@@ -158,6 +160,7 @@ impl<const L: usize> Wall<L> {
                 surroundings: surroundings.clone(),
                 idle_emissivity: station.idle.emissivity.clone(),
                 outside: station.outer.outside.clone(),
+                natural: tabulated(&station.outer.outside, surroundings),
                 outer_area: station.shape.area_ratio(station.outer_distance()),
             }
         });
@@ -380,7 +383,7 @@ impl<const L: usize> Wall<L> {
         let Outside::Open(losses) = &faces.outside else { return (0.0, 0.0) };
         let (flux, slope) = match self.forcing[member].over {
             Over::Coolant { coefficient, temperature } => (coefficient * (face - temperature), coefficient),
-            Over::Losses => outside_losses(losses, &faces.surroundings, face),
+            Over::Losses => outside_losses(losses, &faces.surroundings, faces.natural.as_ref(), face),
         };
         (flux * faces.outer_area, slope * faces.outer_area)
     }
@@ -647,13 +650,27 @@ fn radiated(face: Kelvin, surfaces: Kelvin) -> FluxAndSlope {
     )
 }
 
+/// A table of a convection whose correlation is smooth; those with a change of régime are evaluated as they are.
+fn tabulated(outside: &Outside, surroundings: &Surroundings) -> Option<TabulatedCoefficient> {
+    let Outside::Open(losses) = outside else { return None };
+    let smooth = matches!(
+        losses.convection,
+        Convection::Natural(NaturalSurface::Vertical(_) | NaturalSurface::HorizontalCylinder(_))
+    );
+    smooth.then(|| TabulatedCoefficient::new(surroundings.air, |face| convected(&losses.convection, surroundings, face)))
+}
+
 /// Heat from an outer face by convection and radiation, less the sun, per area of that face.
-pub(super) fn outside_losses(losses: &Losses, surroundings: &Surroundings, face: Kelvin) -> FluxAndSlope {
-    let (mut flux, mut slope) = match losses.convection {
-        Convection::None => (0.0, 0.0),
-        Convection::Coefficient(coefficient) => (coefficient * (face - surroundings.air), coefficient),
-        _ => {
-            let lost = convected(&losses.convection, surroundings, face);
+pub(super) fn outside_losses(losses: &Losses, surroundings: &Surroundings, natural: Option<&TabulatedCoefficient>, face: Kelvin) -> FluxAndSlope {
+    let (mut flux, mut slope) = match (&losses.convection, natural) {
+        (Convection::None, _) => (0.0, 0.0),
+        (Convection::Coefficient(coefficient), _) => (coefficient * (face - surroundings.air), *coefficient),
+        (_, Some(table)) => {
+            let lost = table.flux(face);
+            (lost.value, lost.slope)
+        }
+        (convection, None) => {
+            let lost = convected(convection, surroundings, face);
             (lost.value, lost.slope)
         }
     };

@@ -336,7 +336,11 @@ impl Lowering<'_> {
             .collect();
         for (index, column) in fit.list("columns")?.iter().enumerate() {
             let name = column.table().and_then(|column| column.node("column"));
-            let earlier = columns.iter().take(index).flatten().any(|other| name.and_then(Node::text) == Some(&other.column));
+            let earlier = columns
+                .iter()
+                .take(index)
+                .flatten()
+                .any(|other| name.and_then(Node::text) == Some(&other.column));
             if let (true, Some(name)) = (earlier, name) {
                 let found = Diagnostic::warning("repeated-name", "this column of the log is named twice");
                 self.findings.doubt(&name.words(), found.label("is it meant for two probes?"));
