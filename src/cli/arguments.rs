@@ -94,6 +94,12 @@ pub enum Command {
     /// What happens: peaks, margins, soak-back, approach to steady state, waits, energy balance
     #[command(after_help = RUN_HELP)]
     Run(RunArguments),
+    /// What is built in: every material in a table, or one with its values, ranges, sources and notes
+    #[command(after_help = MATERIALS_HELP)]
+    Materials(MaterialsArguments),
+    /// The JSON Schema (2020-12) of the case file, or of the results
+    #[command(after_help = SCHEMA_HELP)]
+    Schema(SchemaArguments),
     /// Lists the ready time profiles, or explains one with its values and phases
     #[command(after_help = PROFILES_HELP)]
     Profiles(ProfilesArguments),
@@ -103,12 +109,6 @@ pub enum Command {
     /// Prints the manual page, or writes those of all commands into a folder
     #[command(after_help = MAN_HELP)]
     Man(ManArguments),
-    /// What is built in: every material in a table, or one with its values, ranges, sources and notes
-    #[command(after_help = MATERIALS_HELP)]
-    Materials(MaterialsArguments),
-    /// The JSON Schema (2020-12) of the case file, or of the results
-    #[command(after_help = SCHEMA_HELP)]
-    Schema(SchemaArguments),
 }
 
 /// `soakdown new`.

@@ -26,16 +26,6 @@ pub fn run_line(arguments: &RunArguments) -> String {
     finish(words, &arguments.common)
 }
 
-/// `soakdown profiles …`.
-pub fn profiles_line(arguments: &ProfilesArguments) -> String {
-    let mut words = vec!["soakdown".to_owned(), "profiles".to_owned()];
-    words.extend(arguments.name.as_deref().map(quoted));
-    if arguments.json {
-        words.push("--json".to_owned());
-    }
-    words.join(" ")
-}
-
 /// `soakdown materials …`.
 pub fn materials_line(arguments: &MaterialsArguments) -> String {
     let mut words = vec!["soakdown".to_owned(), "materials".to_owned()];
@@ -51,6 +41,16 @@ pub fn materials_line(arguments: &MaterialsArguments) -> String {
             words.extend([option.to_owned(), quoted(&value)]);
         }
     }
+    if arguments.json {
+        words.push("--json".to_owned());
+    }
+    words.join(" ")
+}
+
+/// `soakdown profiles …`.
+pub fn profiles_line(arguments: &ProfilesArguments) -> String {
+    let mut words = vec!["soakdown".to_owned(), "profiles".to_owned()];
+    words.extend(arguments.name.as_deref().map(quoted));
     if arguments.json {
         words.push("--json".to_owned());
     }

@@ -1,6 +1,6 @@
 //! From the words of the command line to a command, and from its end to an exit status.
 
-use super::arguments::{Arguments, ColorChoice, Command, Common, UnitsChoice};
+use super::arguments::{Arguments, Command, Common, UnitsChoice};
 use super::check::check;
 use super::completions::completions;
 use super::exit::ExitStatus;
@@ -24,14 +24,12 @@ pub fn start(words: impl Iterator<Item = OsString>) -> ExitStatus {
         Ok(arguments) => arguments,
         Err(told) => return usage(&told),
     };
-    let (color, quiet) = match &arguments.command {
-        Command::Check(check) => (check.common.color, check.common.quiet),
-        Command::Run(run) => (run.common.color, run.common.quiet),
-        Command::Materials(materials) => (materials.color, false),
-        Command::New(_) | Command::Profiles(_) => (ColorChoice::Auto, false),
-        Command::Completions(_) | Command::Man(_) | Command::Schema(_) => (ColorChoice::Never, false),
+    let printer = match &arguments.command {
+        Command::Check(check) => Printer::new(check.common.color, check.common.quiet),
+        Command::Run(run) => Printer::new(run.common.color, run.common.quiet),
+        Command::Materials(materials) => Printer::new(materials.color, false),
+        Command::New(_) | Command::Profiles(_) | Command::Completions(_) | Command::Man(_) | Command::Schema(_) => Printer::plain(),
     };
-    let printer = Printer::new(color, quiet);
     let result = match &arguments.command {
         Command::Materials(arguments) => materials(arguments, printer),
         Command::Schema(arguments) => schema(arguments, printer),
