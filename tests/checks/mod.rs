@@ -17,3 +17,4 @@ mod slab;
 mod steady;
 mod trade;
 mod traps;
+mod wind;

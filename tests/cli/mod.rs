@@ -1,3 +1,4 @@
 //! What a person types and sees.
 
 mod run_and_check;
+mod shapes;
