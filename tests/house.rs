@@ -23,12 +23,15 @@ const ROOMS: [(&str, u8); 11] = [
 const EVERYWHERE: [&str; 4] = ["uom", "serde", "csv", "thiserror"];
 
 /// The one room of every other crate.
-const HOMES: [(&str, &str); 11] = [
+const HOMES: [(&str, &str); 14] = [
     ("annotate_snippets", "cli"),
     ("anstream", "cli"),
     ("anstyle", "report"),
     ("clap", "cli"),
+    ("clap_complete", "cli"),
+    ("clap_mangen", "cli"),
     ("ctrlc", "cli"),
+    ("schemars", "report"),
     ("serde_json", "report"),
     ("sha2", "case"),
     ("tempfile", "cli"),

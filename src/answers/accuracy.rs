@@ -6,7 +6,7 @@ use crate::run::{Quantity, RunError};
 use crate::wall::Grid;
 
 /// Share of the promised tolerance that one step may err by.
-const STEP_SHARE: f64 = 0.2;
+const STEP_SHARE: f64 = 0.3;
 /// Share of the promised tolerance that the estimate must keep to.
 const WANTED_SHARE: f64 = 0.5;
 /// The second solution's steps may err by this many times more.
@@ -43,6 +43,7 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
     let station = &model.stations[station_index];
     let keep = Keep {
         times: compared_times(model),
+        profile_times: last_burn_start(model).into_iter().collect(),
         ..Keep::default()
     };
     // A hot end that follows another wall can't be surer than that wall.
@@ -83,6 +84,11 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         }
         before = estimated_error;
     }
+}
+
+/// When the last burn starts.
+pub(super) fn last_burn_start(model: &Model) -> Option<Seconds> {
+    model.profile.last_burn().map(|burn| model.profile.starts()[burn])
 }
 
 /// Clocks at which temperatures are promised: from a twentieth of each phase (or 1 s) on, to its end.

@@ -2,7 +2,7 @@
 
 use super::follow::resolve_all;
 use super::pass::PassSettings;
-use crate::model::{HeatingModel, Kelvin, LogRows, Model, PhaseKind, STEFAN_BOLTZMANN, Seconds};
+use crate::model::{HeatingModel, Kelvin, LogRows, Model, PhaseKind, Profile, STEFAN_BOLTZMANN, Seconds};
 use crate::run::RunError;
 
 /// What `check` shows of a model.
@@ -117,18 +117,24 @@ pub fn check(model: &Model, wall: Option<Kelvin>) -> Result<CheckAnswers, RunErr
             heating,
         });
     }
-    let starts = model.profile.starts();
-    let phases = model.profile.phases().iter().zip(starts).map(|(phase, start)| PhaseCheck {
-        kind: phase.kind(),
-        start,
-        duration: phase.duration(),
-        level: phase.level,
-        ramp: phase.ramp,
-        tail: phase.tail,
-        purge: phase.purge,
-    });
     Ok(CheckAnswers {
         stations,
-        phases: phases.collect(),
+        phases: phases(&model.profile),
     })
+}
+
+/// The phases of a profile with their clocks.
+pub fn phases(profile: &Profile) -> Vec<PhaseCheck> {
+    let with_start = profile.phases().iter().zip(profile.starts());
+    with_start
+        .map(|(phase, start)| PhaseCheck {
+            kind: phase.kind(),
+            start,
+            duration: phase.duration(),
+            level: phase.level,
+            ramp: phase.ramp,
+            tail: phase.tail,
+            purge: phase.purge,
+        })
+        .collect()
 }

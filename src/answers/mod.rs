@@ -9,7 +9,7 @@ mod steady;
 mod types;
 
 pub use accuracy::{Resolved, resolve};
-pub use check::{CheckAnswers, HeatingCheck, PhaseCheck, StationCheck, check};
+pub use check::{CheckAnswers, HeatingCheck, PhaseCheck, StationCheck, check, phases};
 pub use pass::{Pass, PassSettings};
 pub use run::{RunOptions, RunOutcome, run};
 pub use types::*;

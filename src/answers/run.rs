@@ -1,6 +1,6 @@
 //! What happens: peaks, margins, soak-back, approach to steady state, waits, energy balance.
 
-use super::accuracy::Resolved;
+use super::accuracy::{Resolved, last_burn_start};
 use super::follow::{ResolvedWall, informed, resolve_all};
 use super::pass::{Keep, LevelOf, Pass, PassSettings, kept, limits};
 use super::steady::{Burn, steady};
@@ -67,25 +67,31 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
     for (index, wall) in walls.iter().enumerate() {
         let (own, resolved) = (&*wall.model, &wall.resolved);
         let station = &own.stations[index];
-        let last_burn_start = model.profile.last_burn().map(|burn| model.profile.starts()[burn]);
+        let last_burn_start = last_burn_start(model);
         let settings = PassSettings {
             step_tolerance: resolved.step_tolerance,
             until: Some(until),
             stop: options.stop,
             ..PassSettings::default()
         };
-        let mut keep = Keep {
-            profile_times: last_burn_start.into_iter().collect(),
-            ..Keep::default()
-        };
-        if options.history {
-            keep.times.clone_from(&times);
-            keep.both_sides = options.times.is_empty();
-            keep.profile_times.extend(profile_times(model, &resolved.pass, until, &options.times));
-            keep.profile_times.sort_by(f64::total_cmp);
-            keep.profile_times.dedup();
+        // What the grid was made with serves, where nothing more is asked and this station decides how long the run goes on.
+        let again = options.history || resolved.pass.watcher.computed_until() < until;
+        let mut longer = None;
+        if again {
+            let mut keep = Keep {
+                profile_times: last_burn_start.into_iter().collect(),
+                ..Keep::default()
+            };
+            if options.history {
+                keep.times.clone_from(&times);
+                keep.both_sides = options.times.is_empty();
+                keep.profile_times.extend(profile_times(model, &resolved.pass, until, &options.times));
+                keep.profile_times.sort_by(f64::total_cmp);
+                keep.profile_times.dedup();
+            }
+            longer = Some(Pass::of_profile(own, index, &resolved.grid, &settings, &keep)?);
         }
-        let mut pass = Pass::of_profile(own, index, &resolved.grid, &settings, &keep)?;
+        let pass = longer.as_ref().unwrap_or(&resolved.pass);
         let from = last_burn_start.and_then(|start| pass.profiles.iter().find(|profile| profile.0 == start));
         let from: Vec<Kelvin> = from.map(|profile| profile.1.iter().map(|point| point.1).collect()).unwrap_or_default();
         let state = match (last_burn_start, pass.watcher.burnt()) {
@@ -106,10 +112,10 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
             _ => Steady::None,
         };
         inside &= !model.allowance.given || keeps_allowance(model, index, &walls, options)?;
-        findings.extend(found(model, station, &pass, resolved));
-        stations.push(answers(model, index, &pass, resolved, state));
-        if options.history {
-            histories.push(history(&mut pass));
+        findings.extend(found(model, station, pass, resolved));
+        stations.push(answers(model, index, pass, resolved, state));
+        if let Some(pass) = longer.filter(|_| options.history) {
+            histories.push(history(pass));
         }
         if let Some(progress) = options.progress {
             progress(0.5 + 0.5 * (index + 1) as f64 / count as f64);
@@ -471,8 +477,8 @@ fn profile_times(model: &Model, pass: &Pass, until: Seconds, asked: &[Seconds]) 
     sorted(&times)
 }
 
-fn history(pass: &mut Pass) -> StationHistory {
-    let trace = std::mem::take(&mut pass.rows).into_iter().map(|row: Row| TraceRow {
+fn history(pass: Pass) -> StationHistory {
+    let trace = pass.rows.into_iter().map(|row: Row| TraceRow {
         time: row.clock,
         phase: row.kind,
         faces: row.faces,
@@ -480,9 +486,7 @@ fn history(pass: &mut Pass) -> StationHistory {
         flux_in: row.flux_in,
         flux_out: row.flux_out,
     });
-    let depths = std::mem::take(&mut pass.profiles)
-        .into_iter()
-        .map(|(time, points)| DepthProfile { time, points });
+    let depths = pass.profiles.into_iter().map(|(time, points)| DepthProfile { time, points });
     StationHistory {
         trace: trace.collect(),
         depths: depths.collect(),

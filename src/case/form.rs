@@ -38,6 +38,8 @@ impl Form<'_> {
         let value = std::mem::replace(&mut node.value, Value::Bad);
         match (value, expect) {
             (Value::Bad, _) => {}
+            // Found in order before: a value of a ready profile.
+            (value @ (Value::Number(_) | Value::Points(_)), _) => node.value = value,
             (value, Expect::Free) => node.value = value,
             (value, Expect::OneOf(choices)) => {
                 let choice = choices.iter().find(|choice| accepts(choice, &value));
@@ -66,6 +68,7 @@ impl Form<'_> {
                     .help(kind.units_that_fit());
                 self.findings.at(&node.spot, found);
             }
+            (Value::Integer(number), Expect::Version) => self.whole(node, number, (i128::MIN, i128::MAX), path),
             (Value::Integer(number), Expect::Whole(least, most)) => self.whole(node, number, (*least, *most), path),
             (value @ (Value::Integer(_) | Value::Float(_)), Expect::Number(bounds) | Expect::Property(_, bounds)) => {
                 #[expect(clippy::cast_precision_loss, reason = "an integer where a float is due is read as the nearest float")]
@@ -97,7 +100,7 @@ impl Form<'_> {
                     self.findings.at(&spot, found.help(format!("one of: {}", words.join(", "))));
                 }
             }
-            (Value::Text(text), Expect::Text) => {
+            (Value::Text(text), Expect::Text | Expect::Known(_)) => {
                 self.input(node, path, InputValue::Word(text.clone()), Kind::Number);
                 node.value = Value::Text(text);
             }
@@ -308,7 +311,9 @@ impl Form<'_> {
         if let (Value::Table(_), Expect::Sections(section)) = (value, expect) {
             found = found.help(format!("a list of tables is due, written {} or [ {{ … }}, {{ … }} ]", section.title));
         }
-        if let (Value::Text(_), Expect::Number(_) | Expect::Whole(..) | Expect::Switch | Expect::Property(Kind::Number, _)) = (value, expect) {
+        if let (Value::Text(_), Expect::Number(_) | Expect::Whole(..) | Expect::Version | Expect::Switch | Expect::Property(Kind::Number, _)) =
+            (value, expect)
+        {
             found = found.help("written bare, without quotes and unit");
         }
         self.findings.at(spot, found);
@@ -378,9 +383,9 @@ pub(super) fn member(item: &Node, section: &Section, index: usize, lone: bool) -
 
 fn accepts(expect: &Expect, value: &Value) -> bool {
     match expect {
-        Expect::Quantity(..) | Expect::Word(_) | Expect::Text | Expect::Name => matches!(value, Value::Text(_)),
+        Expect::Quantity(..) | Expect::Word(_) | Expect::Text | Expect::Known(_) | Expect::Name => matches!(value, Value::Text(_)),
         Expect::Number(_) => matches!(value, Value::Integer(_) | Value::Float(_)),
-        Expect::Whole(..) => matches!(value, Value::Integer(_)),
+        Expect::Whole(..) | Expect::Version => matches!(value, Value::Integer(_)),
         Expect::Switch => matches!(value, Value::Switch(_)),
         Expect::Property(Kind::Number, _) => matches!(value, Value::Integer(_) | Value::Float(_) | Value::List(_)),
         Expect::Property(..) => matches!(value, Value::Text(_) | Value::List(_)),
@@ -416,10 +421,10 @@ pub(super) fn due(expect: &Expect) -> String {
             format!("{} with its unit is due, as in \"5 {example}\"", kind.words())
         }
         Expect::Number(_) => "a bare number is due".to_owned(),
-        Expect::Whole(..) => "a whole number is due".to_owned(),
+        Expect::Whole(..) | Expect::Version => "a whole number is due".to_owned(),
         Expect::Switch => "true or false is due".to_owned(),
         Expect::Word(words) => format!("one of these words is due: {}", words.join(", ")),
-        Expect::Text => "a text in quotes is due".to_owned(),
+        Expect::Text | Expect::Known(_) => "a text in quotes is due".to_owned(),
         Expect::Name => "a name in quotes is due".to_owned(),
         Expect::Property(Kind::Number, _) => "a bare number is due, or a list of pairs [[\"20 degC\", 0.8], …]".to_owned(),
         Expect::Property(kind, _) => {

@@ -93,7 +93,7 @@ pub fn load(path: &Path, settings: &[String]) -> Result<Case, Diagnostics> {
 }
 
 /// The tree of a text, and whether the text is sound TOML; where it is not, the mistakes are reported and the tree holds what could be read.
-fn read_tree(text: &str, source: usize, findings: &mut Findings) -> (Node, bool) {
+pub(super) fn read_tree(text: &str, source: usize, findings: &mut Findings) -> (Node, bool) {
     let (table, errors) = DeTable::parse_recoverable(text);
     for error in &errors {
         let mut range = error.span().unwrap_or(0..0);

@@ -159,7 +159,7 @@ fn walk(node: Option<&Node>, expect: &'static Expect, segments: &[Segment], step
         Expect::Named(_) => {
             let table = table_of(node, segment)?;
             let inner = table.and_then(|table| table.node(&segment.name));
-            if inner.is_none() && library::card(&segment.name).is_none() {
+            if inner.is_none() && !library::has(&segment.name) {
                 let own = table.into_iter().flat_map(|table| table.entries.iter().map(|entry| entry.key.as_str()));
                 let message = format!("no material is called \"{}\"", segment.name);
                 return Err(unknown(segment, &message, own.chain(library::names().map(|name| -> &str { name }))));

@@ -657,3 +657,145 @@ proptest::proptest! {
         }
     }
 }
+
+/// A case that uses a ready profile.
+fn with_ready(profile: &str) -> String {
+    let start = CHAMBER.find("phases = ").unwrap_or(0);
+    let end = start + CHAMBER[start..].find("\n[[station]]").unwrap_or(0);
+    format!("{}{profile}{}", &CHAMBER[..start], &CHAMBER[end..])
+}
+
+fn durations(case: &Case) -> Vec<f64> {
+    case.model.profile().phases().iter().map(|phase| phase.duration()).collect()
+}
+
+#[test]
+fn every_shipped_profile_can_be_used_and_read_as_a_file() -> Outcome {
+    let files = folder("profiles/burns")?;
+    let mut names: Vec<_> = files.iter().filter_map(|path| path.file_stem()?.to_str()).collect();
+    let mut known: Vec<_> = super::ready::names().collect();
+    names.sort_unstable();
+    known.sort_unstable();
+    assert_eq!(names, known, "the list in ready.rs and the folder agree");
+    assert!(names.len() >= 8);
+    for name in names {
+        let by_name = accepted(&with_ready(&format!("use = \"{name}\"")), &[]).map_err(|error| format!("{name}: {error}"))?;
+        let path = PathBuf::from(env!("CARGO_MANIFEST_DIR")).join(format!("profiles/burns/{name}.toml"));
+        let by_path = accepted(&with_ready(&format!("use = '{}'", path.display())), &[]).map_err(|error| format!("{name}: {error}"))?;
+        assert_eq!(by_name.model.profile(), by_path.model.profile(), "{name}");
+        assert_eq!(
+            (by_name.files.len(), by_path.files.len()),
+            (0, 1),
+            "a file that is read is named with its digest"
+        );
+        let ready = super::ready_profile(name).map_err(|found| format!("{name}: {:?}", told(&found)))?;
+        assert_eq!(&ready.profile, by_name.model.profile(), "{name}");
+        assert!(ready.explanation.len() > 100 && ready.written.contains('$'), "{name}");
+        for value in &ready.values {
+            let path = format!("profile.values.{}", value.name);
+            let listed = input(&by_name, &path).ok_or_else(|| format!("{name}: {path} is not listed"))?;
+            assert_eq!((listed.from.as_str(), &listed.value), ("default", &value.value), "{name} {path}");
+            assert!(value.meaning.len() > 10, "{name} {path}");
+            // What a page shows as the default can be set again, and changes nothing but where it comes from.
+            let set = accepted(
+                &with_ready(&format!("use = \"{name}\"")),
+                &[&format!("{path}={}", value.default.trim_matches('"'))],
+            )?;
+            assert_eq!(set.model.profile(), by_name.model.profile(), "{name} {path}");
+            assert_eq!(input(&set, &path).map(|input| input.from.as_str()), Some("set"));
+        }
+        let fixed = by_name.inputs.iter().any(|input| input.path.starts_with("profile.phases"));
+        assert!(!fixed, "{name}: phases of a ready profile can't be set, and are not listed as if");
+    }
+    Ok(())
+}
+
+#[test]
+fn values_go_where_they_are_named() -> Outcome {
+    let text = with_ready("use = \"pulse-train\"\nvalues = { pulse = \"1 s\", gap = \"4 s\", count = 2 }");
+    assert_eq!(durations(&accepted(&text, &[])?), [1.0, 4.0, 1.0, 4.0, 3600.0]);
+    let set = accepted(&text, &["profile.values.pulse=3 s", "profile.values.count=1"])?;
+    assert_eq!(durations(&set), [3.0, 4.0, 3600.0]);
+    assert_eq!(input(&set, "profile.values.pulse").map(|input| input.from.as_str()), Some("set"));
+    assert_eq!(input(&set, "profile.values.gap").map(|input| input.from.as_str()), Some("case"));
+    let other = accepted(&text, &["profile.use=single-burn", "profile.values={ burn = \"7 s\" }"])?;
+    assert_eq!(durations(&other), [7.0, 3600.0]);
+    for (setting, code, characters) in [
+        ("profile.values.pulze=3 s", "unknown-value", "pulze"),
+        ("profile.values.pulse=3 K", "wrong-unit", "K"),
+        ("profile.values.pulse=3", "missing-unit", "3"),
+        ("profile.use=pulse_tran", "unknown-profile", "pulse_tran"),
+        ("profile.phases.0.burn=3 s", "excluded", "use"),
+    ] {
+        let found = refused(&text, &[setting]).map_err(|error| format!("{setting}: {error}"))?;
+        assert!(
+            found.iter().any(|found| found.0 == code && (code == "excluded" || found.1 == characters)),
+            "{setting}: {found:?}"
+        );
+    }
+    Ok(())
+}
+
+#[test]
+fn an_odd_value_is_doubted_once_though_it_is_used_twice() -> Outcome {
+    let case = accepted(&with_ready("use = \"hot-restart\"\nvalues = { burn = \"3 h\" }"), &[])?;
+    assert_eq!(told(&case.doubts), [("odd-value", "3 h".to_owned())]);
+    Ok(())
+}
+
+#[test]
+fn mistakes_in_a_profile_of_ones_own_are_shown_there() -> Outcome {
+    let folder = Folder::new()?;
+    let case = folder.path().join("case.toml");
+    std::fs::write(&case, with_ready("use = \"mine.toml\""))?;
+    let sound = "title = \"Mine\"\nexplanation = \"One burn.\"\nphases = [ { burn = \"$burn\" } ]\nvalues.burn = { default = \"2 s\", meaning = \"its length\" }\n";
+    std::fs::write(folder.path().join("mine.toml"), sound)?;
+    load(&case, &[]).map_err(|found| format!("{:?}", told(&found)))?;
+    for (from, to, code, characters) in [
+        ("$burn", "$brun", "unknown-value", "$brun"),
+        ("\"2 s\"", "\"2 m\"", "wrong-unit", "m"),
+        ("values.burn", "values.rest", "unused-value", "rest"),
+        ("title", "titel", "unknown-key", "titel"),
+        ("{ burn =", "{ bunr =", "unknown-key", "bunr"),
+        ("meaning", "meening", "unknown-key", "meening"),
+        ("phases = [ {", "phases = [ [", "syntax", ""),
+        ("values.burn = {", "values.burn = \"3 s\" #", "wrong-type", "\"3 s\""),
+    ] {
+        std::fs::write(folder.path().join("mine.toml"), sound.replacen(from, to, 1))?;
+        let Err(found) = load(&case, &[]) else {
+            return Err(format!("{to}: accepted").into());
+        };
+        let names: Vec<_> = found.list.iter().filter_map(|found| found.place.as_ref()).map(|place| place.0).collect();
+        assert!(
+            names.iter().all(|source| found.sources[*source].name.ends_with("mine.toml")),
+            "{to}: {:?}",
+            told(&found)
+        );
+        let told = told(&found);
+        assert!(
+            told.iter()
+                .any(|found| found.0 == code && (characters.is_empty() || found.1 == characters)),
+            "{to}: {told:?}"
+        );
+    }
+    Ok(())
+}
+
+#[test]
+fn every_starter_is_sound_and_names_itself() -> Outcome {
+    let files = folder("profiles/starters")?;
+    assert_eq!(files.len(), super::STARTERS.len(), "the list in shipped.rs and the folder agree");
+    assert!(super::STARTERS.len() >= 5);
+    for starter in super::STARTERS {
+        let text = starter.text("my-own.toml");
+        assert!(
+            text.contains("soakdown run my-own.toml") && !text.contains("CASE.toml"),
+            "{}",
+            starter.kind
+        );
+        let case = accepted(&text, &[]).map_err(|error| format!("{}: {error}", starter.kind))?;
+        assert!(case.doubts.list.is_empty(), "{}: {:?}", starter.kind, told(&case.doubts));
+        assert!(!case.model.waits().is_empty(), "{}", starter.kind);
+    }
+    Ok(())
+}

@@ -1,6 +1,7 @@
 //! The command as it would be typed again: what documents carry. Without `--out`, `--quiet` and `--color`, which change no answer.
 
-use super::arguments::{CheckArguments, Common, RunArguments, UnitsChoice};
+use super::arguments::{CheckArguments, Common, MaterialsArguments, ProfilesArguments, RunArguments, UnitsChoice};
+use clap::ValueEnum;
 use std::path::Path;
 
 /// `soakdown check …`.
@@ -19,7 +20,41 @@ pub fn run_line(arguments: &RunArguments) -> String {
         let times: Vec<&str> = arguments.times.iter().map(|time| time.text.as_str()).collect();
         words.extend(["--times".to_owned(), quoted(&times.join(", "))]);
     }
+    if let Some(log) = &arguments.log {
+        words.extend(["--log".to_owned(), path_word(log)]);
+    }
     finish(words, &arguments.common)
+}
+
+/// `soakdown materials …`.
+pub fn materials_line(arguments: &MaterialsArguments) -> String {
+    let mut words = vec!["soakdown".to_owned(), "materials".to_owned()];
+    words.extend(arguments.name.as_deref().map(quoted));
+    let confidence = arguments.confidence.and_then(|choice| choice.to_possible_value());
+    let options = [
+        ("--find", arguments.find.clone()),
+        ("--confidence", confidence.map(|choice| choice.get_name().to_owned())),
+        ("--limit-above", arguments.limit_above.as_ref().map(|limit| limit.text.clone())),
+    ];
+    for (option, value) in options {
+        if let Some(value) = value {
+            words.extend([option.to_owned(), quoted(&value)]);
+        }
+    }
+    if arguments.json {
+        words.push("--json".to_owned());
+    }
+    words.join(" ")
+}
+
+/// `soakdown profiles …`.
+pub fn profiles_line(arguments: &ProfilesArguments) -> String {
+    let mut words = vec!["soakdown".to_owned(), "profiles".to_owned()];
+    words.extend(arguments.name.as_deref().map(quoted));
+    if arguments.json {
+        words.push("--json".to_owned());
+    }
+    words.join(" ")
 }
 
 fn finish(mut words: Vec<String>, common: &Common) -> String {
@@ -38,7 +73,7 @@ fn finish(mut words: Vec<String>, common: &Common) -> String {
     words.join(" ")
 }
 
-fn path_word(path: &Path) -> String {
+pub fn path_word(path: &Path) -> String {
     quoted(&path.to_string_lossy())
 }
 

@@ -25,6 +25,24 @@ pub enum Failure {
     /// The answer can't be printed.
     #[error("the answer can't be printed: {0}")]
     Print(#[source] io::Error),
+    /// A new file would take the place of one that is there.
+    #[error("{} exists already and is left as it is: choose another name, or move it out of the way first", path.display())]
+    Exists {
+        /// The file.
+        path: PathBuf,
+    },
+    /// The folder of a new file is not there.
+    #[error("there is no folder {}: make it first, or choose another name", folder.display())]
+    NoFolder {
+        /// The folder.
+        folder: PathBuf,
+    },
+    /// A name that can't be a case file's.
+    #[error("\"{name}\" can't name a case file: a name such as my-wall is due, which becomes my-wall.toml")]
+    BadName {
+        /// As typed.
+        name: String,
+    },
     /// A file can't be written.
     #[error("{} was not written: {source}", path.display())]
     Write {
@@ -41,7 +59,14 @@ impl Failure {
         match self {
             Self::Refused(_) => ExitStatus::Refused,
             Self::Run(RunError::Interrupted) => ExitStatus::Interrupted,
-            Self::Run(_) | Self::Interrupt(_) | Self::Report(_) | Self::Print(_) | Self::Write { .. } => ExitStatus::Failed,
+            Self::BadName { .. } => ExitStatus::Refused,
+            Self::Run(_)
+            | Self::Interrupt(_)
+            | Self::Report(_)
+            | Self::Print(_)
+            | Self::Exists { .. }
+            | Self::NoFolder { .. }
+            | Self::Write { .. } => ExitStatus::Failed,
         }
     }
 }

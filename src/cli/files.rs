@@ -7,9 +7,9 @@ use std::path::{Path, PathBuf};
 use tempfile::NamedTempFile;
 
 /// A file to write: its name in the folder, and its bytes.
-pub struct OutputFile {
+pub struct OutputFile<'a> {
     /// Its name.
-    pub name: &'static str,
+    pub name: &'a str,
     /// All of it.
     pub bytes: Vec<u8>,
 }
@@ -18,7 +18,7 @@ pub struct OutputFile {
 ///
 /// # Errors
 /// With the first file or folder that can't be written.
-pub fn write_files(folder: &Path, files: &[OutputFile]) -> Result<(), Failure> {
+pub fn write_files(folder: &Path, files: &[OutputFile<'_>]) -> Result<(), Failure> {
     fs::create_dir_all(folder).map_err(|source| failure(folder.to_owned(), source))?;
     let mut staged = Vec::new();
     for file in files {
@@ -30,6 +30,23 @@ pub fn write_files(folder: &Path, files: &[OutputFile]) -> Result<(), Failure> {
         temporary.persist(&path).map_err(|error| failure(path, error.error))?;
     }
     Ok(())
+}
+
+/// Writes one new file; one that is there already is left as it is.
+///
+/// # Errors
+/// When the file exists, or can't be written.
+pub fn write_new(path: &Path, bytes: &[u8]) -> Result<(), Failure> {
+    let folder = path.parent().filter(|folder| !folder.as_os_str().is_empty()).unwrap_or(Path::new("."));
+    if !folder.is_dir() {
+        return Err(Failure::NoFolder { folder: folder.to_owned() });
+    }
+    let temporary = stage(folder, bytes).map_err(|source| failure(path.to_owned(), source))?;
+    match temporary.persist_noclobber(path) {
+        Ok(_) => Ok(()),
+        Err(error) if error.error.kind() == io::ErrorKind::AlreadyExists => Err(Failure::Exists { path: path.to_owned() }),
+        Err(error) => Err(failure(path.to_owned(), error.error)),
+    }
 }
 
 fn stage(folder: &Path, bytes: &[u8]) -> io::Result<NamedTempFile> {
@@ -53,7 +70,7 @@ fn failure(path: PathBuf, source: io::Error) -> Failure {
 mod tests {
     use super::*;
 
-    fn file(name: &'static str) -> OutputFile {
+    fn file(name: &str) -> OutputFile<'_> {
         OutputFile { name, bytes: b"x".to_vec() }
     }
 

@@ -3,14 +3,20 @@
 mod arguments;
 mod check;
 mod command_line;
+mod completions;
 mod exit;
 mod failure;
 mod files;
 mod interrupt;
+mod man;
+mod materials;
 mod mistakes;
+mod new;
 mod printer;
+mod profiles;
 mod progress;
 mod run;
+mod schema;
 mod start;
 
 pub use start::start;

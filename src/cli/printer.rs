@@ -23,6 +23,11 @@ impl Printer {
         Self { color, quiet }
     }
 
+    /// A printer of commands without options for it.
+    pub fn plain() -> Self {
+        Self::new(ColorChoice::Auto, false)
+    }
+
     /// A page for a person, on standard output.
     pub fn page(&self, text: &str) -> Result<(), Failure> {
         if self.quiet { Ok(()) } else { self.answer(text) }

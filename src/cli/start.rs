@@ -2,11 +2,17 @@
 
 use super::arguments::{Arguments, Command, Common, UnitsChoice};
 use super::check::check;
+use super::completions::completions;
 use super::exit::ExitStatus;
 use super::failure::Failure;
+use super::man::man;
+use super::materials::materials;
 use super::mistakes::{plain_error, rendered};
+use super::new::new;
 use super::printer::Printer;
+use super::profiles::profiles;
 use super::run::run;
+use super::schema::schema;
 use clap::Parser;
 use clap::error::ErrorKind;
 use soakdown::report::Units;
@@ -18,14 +24,21 @@ pub fn start(words: impl Iterator<Item = OsString>) -> ExitStatus {
         Ok(arguments) => arguments,
         Err(told) => return usage(&told),
     };
-    let common = match &arguments.command {
-        Command::Check(check) => &check.common,
-        Command::Run(run) => &run.common,
+    let printer = match &arguments.command {
+        Command::Check(check) => Printer::new(check.common.color, check.common.quiet),
+        Command::Run(run) => Printer::new(run.common.color, run.common.quiet),
+        Command::Materials(materials) => Printer::new(materials.color, false),
+        Command::New(_) | Command::Profiles(_) | Command::Completions(_) | Command::Man(_) | Command::Schema(_) => Printer::plain(),
     };
-    let printer = Printer::new(common.color, common.quiet);
     let result = match &arguments.command {
+        Command::Materials(arguments) => materials(arguments, printer),
+        Command::Schema(arguments) => schema(arguments, printer),
         Command::Check(arguments) => check(arguments, printer),
         Command::Run(arguments) => run(arguments, printer),
+        Command::New(arguments) => new(arguments, printer),
+        Command::Profiles(arguments) => profiles(arguments, printer),
+        Command::Completions(arguments) => completions(arguments, printer),
+        Command::Man(arguments) => man(arguments, printer),
     };
     result.unwrap_or_else(|failure| {
         printer.mistake(&match &failure {
@@ -61,7 +74,12 @@ fn refusal(diagnostics: &soakdown::diagnostics::Diagnostics) -> String {
 
 /// Units of the screen.
 pub fn units(common: &Common) -> Units {
-    match common.units {
+    units_of(common.units)
+}
+
+/// Units of the screen.
+pub fn units_of(choice: UnitsChoice) -> Units {
+    match choice {
         UnitsChoice::Si => Units::Si,
         UnitsChoice::Us => Units::Us,
     }

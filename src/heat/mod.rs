@@ -6,6 +6,7 @@ mod gases;
 mod natural;
 mod radiation;
 mod slope;
+mod tabulated;
 
 pub use forced::{convected, cylinder_across_nusselt, forced_coefficient, plate_along_nusselt};
 pub use gap::{GapFlux, gap_flux};
@@ -16,3 +17,4 @@ pub use natural::{
 };
 pub use radiation::{disk_to_disk_view, grey_exchange, open_cylinder_view};
 pub use slope::Slope;
+pub use tabulated::TabulatedCoefficient;

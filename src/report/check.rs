@@ -5,21 +5,34 @@ use super::cautions::cautions_of_case;
 use super::result::{CautionRow, FileRow, WarningRow, file_rows, warning_rows};
 use crate::answers::{CheckAnswers, HeatingCheck, PhaseCheck, StationCheck};
 use crate::case::{Case, Input, InputValue};
+use schemars::JsonSchema;
 use serde::Serialize;
 
 /// `check.json`.
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 pub struct CheckDocument<'a> {
+    /// Name and version of this document.
+    #[schemars(extend("const" = "soakdown-check/1"))]
     format: &'static str,
+    /// Name and version of the program.
     program: &'static str,
+    /// The command as it would be typed again, without --jobs, --out, --quiet and --color.
     command: &'a str,
+    /// Path of the case file, as given.
     case: &'a str,
+    /// sha256: and the hexadecimal digest of the case file's bytes and the settings put on it.
     case_digest: &'a str,
+    /// The other files that the case reads.
     files: Vec<FileRow<'a>>,
+    /// The stations, in the order of the case.
     stations: Vec<StationRow<'a>>,
+    /// The phases as they run.
     phases: Vec<PhaseRow>,
+    /// Every input with where it comes from.
     inputs: Vec<InputRow<'a>>,
+    /// What should be known about the case.
     warnings: Vec<WarningRow>,
+    /// What people must mind, chosen by situation.
     cautions: Vec<CautionRow>,
 }
 
@@ -48,10 +61,14 @@ impl<'a> CheckDocument<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
+#[schemars(rename = "CheckStationRow")]
 struct StationRow<'a> {
+    /// Name of the station.
     name: &'a str,
+    /// Nodes through the wall.
     nodes: usize,
+    /// What heats its hot face; null if nothing does.
     heating: Option<HeatingRow>,
 }
 
@@ -65,16 +82,21 @@ impl<'a> StationRow<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct HeatingRow {
+    /// Wall temperature at which it is shown.
     #[serde(rename = "wall_K")]
     wall: f64,
+    /// Film coefficient, where there is one.
     #[serde(rename = "coefficient_W_m2_K")]
     coefficient: Option<f64>,
+    /// Recovery temperature of the gas, where there is one.
     #[serde(rename = "gas_temperature_K")]
     gas_temperature: Option<f64>,
+    /// All heat into the wall at level 1.
     #[serde(rename = "flux_W_m2")]
     flux: f64,
+    /// Its parts.
     parts: Vec<PartRow>,
 }
 
@@ -90,26 +112,36 @@ impl HeatingRow {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct PartRow {
+    /// What it is.
     name: &'static str,
+    /// Heat flux of this part.
     #[serde(rename = "flux_W_m2")]
     flux: f64,
 }
 
-#[derive(Debug, Serialize)]
-struct PhaseRow {
+#[derive(Debug, Serialize, JsonSchema)]
+pub(super) struct PhaseRow {
+    /// What it is.
+    #[schemars(extend("enum" = ["burn", "hold", "shutdown"]))]
     kind: &'static str,
+    /// When it starts.
     start_s: f64,
+    /// How long it lasts.
     duration_s: f64,
+    /// Chamber pressure against its nominal value.
     level: f64,
+    /// Time in which the heating rises.
     ramp_s: f64,
+    /// Time in which the heating falls after the burn.
     tail_s: f64,
+    /// Whether the purge flows.
     purge: bool,
 }
 
 impl PhaseRow {
-    fn new(phase: &PhaseCheck) -> Self {
+    pub(super) fn new(phase: &PhaseCheck) -> Self {
         Self {
             kind: phase.kind.word(),
             start_s: phase.start,
@@ -122,11 +154,15 @@ impl PhaseRow {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct InputRow<'a> {
+    /// Keys joined by dots, as --set takes them.
     path: &'a str,
+    /// A number in SI, a word, a switch, or pairs of kelvin and value in SI.
     value: ValueCell<'a>,
+    /// SI unit; empty for pure numbers, words and switches.
     unit: &'a str,
+    /// case, default, set, or the source of a built-in value.
     from: &'a str,
 }
 
@@ -134,25 +170,31 @@ impl<'a> InputRow<'a> {
     fn new(input: &'a Input) -> Self {
         Self {
             path: &input.path,
-            value: match &input.value {
-                InputValue::Number(value) => ValueCell::Number(*value),
-                InputValue::Word(word) => ValueCell::Word(word),
-                InputValue::Switch(on) => ValueCell::Switch(*on),
-                InputValue::Table(points) => ValueCell::Table(points),
-            },
+            value: ValueCell::new(&input.value),
             unit: input.unit,
             from: &input.from,
         }
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 #[serde(untagged)]
-enum ValueCell<'a> {
+pub(super) enum ValueCell<'a> {
     Number(f64),
     Word(&'a str),
     Switch(bool),
     Table(&'a [(f64, f64)]),
+}
+
+impl<'a> ValueCell<'a> {
+    pub(super) fn new(value: &'a InputValue) -> Self {
+        match value {
+            InputValue::Number(value) => Self::Number(*value),
+            InputValue::Word(word) => Self::Word(word),
+            InputValue::Switch(on) => Self::Switch(*on),
+            InputValue::Table(points) => Self::Table(points),
+        }
+    }
 }
 
 #[cfg(test)]

@@ -60,6 +60,22 @@ impl Figures {
         format!("{} {unit}", trimmed(rounded(value, 0.01, Toward::Smaller), 2))
     }
 
+    /// A limit or a melting point. One that was given in whole kelvin is not known to a hundredth of a degree: it is shown to the degree, never higher.
+    pub(super) fn limit(self, temperature: Kelvin) -> String {
+        let (value, unit) = self.scale(temperature);
+        let whole = |value: f64| (value - value.round()).abs() < 1e-6;
+        if whole(temperature) && !whole(value) {
+            return format!("{:.0} {unit}", rounded(value, 1.0, Toward::Smaller));
+        }
+        self.given(temperature)
+    }
+
+    /// A temperature at which something was measured, to the nearest degree.
+    pub(super) fn near(self, temperature: Kelvin) -> String {
+        let (value, unit) = self.scale(temperature);
+        format!("{} {unit}", trimmed(value, 0))
+    }
+
     /// A difference that was given or found by counting, to two figures, never smaller: error estimates.
     pub(super) fn estimate(self, difference: KelvinDifference) -> String {
         let (value, unit) = match self.units {
@@ -172,6 +188,23 @@ pub(super) fn significant(value: f64, figures: i32) -> String {
     }
 }
 
+/// A number to so many significant figures, to nearest: an input is shown, not judged.
+pub(super) fn nearest(value: f64, figures: usize) -> String {
+    let magnitude = value.abs();
+    let last = figures.saturating_sub(1);
+    if magnitude != 0.0 && !(1e-4..1e7).contains(&magnitude) {
+        let text = format!("{value:.last$e}");
+        let (digits, power) = text.split_once('e').unwrap_or((&text, "0"));
+        return format!("{}e{power}", digits.trim_end_matches('0').trim_end_matches('.'));
+    }
+    // The power of ten of the first digit, after rounding.
+    let power = format!("{value:.last$e}")
+        .split_once('e')
+        .and_then(|(_, power)| power.parse::<i32>().ok());
+    let decimals = i32::try_from(last).unwrap_or(i32::MAX).saturating_sub(power.unwrap_or(0));
+    trimmed(value, usize::try_from(decimals).unwrap_or(0))
+}
+
 /// A share as a percentage, to the next whole one: nearer to the end than it is.
 pub(super) fn percent(share: f64) -> String {
     format!("{:.0} %", rounded(share * 100.0, 1.0, Toward::Larger))
@@ -280,6 +313,35 @@ mod tests {
         assert_eq!(given_duration(0.1), "0.1 s");
         assert_eq!(given_duration(7200.0), "2 h");
         assert_eq!(given_duration(130.25), "2 min 10.25 s");
+    }
+
+    #[test]
+    fn a_limit_in_whole_kelvin_shows_whole_degrees_and_never_higher() {
+        assert_eq!(si(0.0).limit(1473.0), "1199 °C");
+        assert_eq!(Figures::new(Units::Us, 0.0).limit(1473.0), "2191 °F");
+        assert_eq!(si(0.0).limit(523.15), "250 °C");
+        assert_eq!(si(0.0).limit(1357.77), "1084.62 °C");
+        // 200 °F and 480 °F
+        assert_eq!(si(0.0).limit((200.0 + 459.67) / 1.8), "93.33 °C");
+        assert_eq!(Figures::new(Units::Us, 0.0).limit((480.0 + 459.67) / 1.8), "480 °F");
+    }
+
+    #[test]
+    fn inputs_keep_their_figures() {
+        for (value, text) in [
+            (101_325.0, "101325"),
+            (0.3, "0.3"),
+            (5.2e7, "5.2e7"),
+            (1.0, "1"),
+            (2.5e-6, "2.5e-6"),
+            (0.0, "0"),
+            (1234.5678, "1234.57"),
+            (1.0 / 11.0, "0.0909091"),
+            (0.99999999, "1"),
+        ] {
+            assert_eq!(nearest(value, 6), text);
+        }
+        assert_eq!((nearest(53.334, 3), nearest(8933.4, 3)), ("53.3".to_owned(), "8933".to_owned()));
     }
 
     #[test]

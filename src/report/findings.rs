@@ -35,7 +35,7 @@ fn notice(finding: &Finding, figures: Figures) -> Notice {
         Finding::Melts { station, layer, at, first } => {
             let text = format!(
                 "the melting point of {} is passed from {} on; nothing after that describes the wall",
-                figures.given(*at),
+                figures.limit(*at),
                 clock(*first)
             );
             of("melts", text, station, Some(layer))
@@ -43,7 +43,7 @@ fn notice(finding: &Finding, figures: Figures) -> Notice {
         Finding::Decomposes { station, layer, at, first } => {
             let text = format!(
                 "decomposes above {}, passed from {} on; its heat, its gas and its loss of substance are not in this model",
-                figures.given(*at),
+                figures.limit(*at),
                 clock(*first)
             );
             of("decomposes", text, station, Some(layer))

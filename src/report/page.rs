@@ -60,6 +60,11 @@ impl Page {
             .extend(textwrap::wrap(&text, options).into_iter().map(|line| line.into_owned()));
     }
 
+    /// A line that is to be copied, as it is.
+    pub(super) fn line(&mut self, indent: usize, text: &str) {
+        self.lines.push(format!("{:indent$}{text}", ""));
+    }
+
     /// An empty line.
     pub(super) fn gap(&mut self) {
         self.lines.push(String::new());

@@ -10,25 +10,43 @@ use crate::answers::{
 use crate::case::{Case, CaseFile};
 use crate::diagnostics::Notice;
 use crate::model::{LimitKind, LimitOrigin};
+use schemars::JsonSchema;
 use serde::Serialize;
 
 /// `result.json`.
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 pub struct ResultDocument<'a> {
+    /// Name and version of this document.
+    #[schemars(extend("const" = "soakdown-result/1"))]
     format: &'static str,
+    /// Name and version of the program.
     program: &'static str,
+    /// The command as it would be typed again, without --jobs, --out, --quiet and --color.
     command: &'a str,
+    /// Path of the case file, as given.
     case: &'a str,
+    /// sha256: and the hexadecimal digest of the case file's bytes and the settings put on it.
     case_digest: &'a str,
+    /// The other files that the case reads.
     files: Vec<FileRow<'a>>,
+    /// Title of the case.
     title: &'a str,
+    /// The worst that was found; from worst to best: outside-model (a melting point is passed), over-limit, inside-allowance (kept, but not with [allowance]), no-limits, within-limits.
+    #[schemars(extend("enum" = ["outside-model", "over-limit", "inside-allowance", "no-limits", "within-limits"]))]
     verdict: &'static str,
+    /// The place with the least margin; null without limits.
     worst: Option<WorstRow<'a>>,
+    /// STATION/LAYER of each layer without a limit.
     without_limit: &'a [String],
+    /// End of the last burn: the command, before a tail; null without a burn.
     last_burn_end_s: Option<f64>,
+    /// Clock to which the run was computed.
     computed_until_s: f64,
+    /// The stations, in the order of the case.
     stations: Vec<StationRow<'a>>,
+    /// What should be known about the answer.
     warnings: Vec<WarningRow>,
+    /// What people must mind, chosen by situation.
     cautions: Vec<CautionRow>,
 }
 
@@ -66,9 +84,11 @@ impl<'a> ResultDocument<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 pub(super) struct FileRow<'a> {
+    /// As the case names it.
     path: &'a str,
+    /// sha256: and the hexadecimal digest of its bytes.
     digest: &'a str,
 }
 
@@ -82,11 +102,15 @@ pub(super) fn file_rows(files: &[CaseFile]) -> Vec<FileRow<'_>> {
         .collect()
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 pub(super) struct WarningRow {
+    /// A fixed name, such as property-table-left.
     code: &'static str,
+    /// In words.
     text: String,
+    /// The station it is about.
     station: Option<String>,
+    /// The place in that station.
     #[serde(rename = "where")]
     place: Option<String>,
 }
@@ -102,39 +126,60 @@ pub(super) fn warning_rows(notices: impl Iterator<Item = Notice>) -> Vec<Warning
         .collect()
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 pub(super) struct CautionRow {
+    /// A fixed name, such as hot-surface.
     pub(super) code: &'static str,
+    /// In words.
     pub(super) text: String,
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct WorstRow<'a> {
+    /// Name of the station.
     station: &'a str,
+    /// Place in that station.
     #[serde(rename = "where")]
     place: &'a str,
+    /// Its margin, K.
     #[serde(rename = "margin_K")]
     margin: f64,
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct StationRow<'a> {
+    /// Name of the station.
     name: &'a str,
+    /// Mass of the wall per area of the hot face.
     mass_kg_per_m2: f64,
+    /// Thickness of the wall.
     thickness_m: f64,
+    /// The layers, from the hot face outwards.
     layers: Vec<LayerRow<'a>>,
+    /// The joints, from the hot face outwards.
     joints: Vec<JointRow<'a>>,
+    /// The heated face.
     hot_face: PlaceRow,
+    /// The face away from the heat.
     outer_face: PlaceRow,
+    /// The probes, as they read.
     probes: Vec<ProbeRow<'a>>,
+    /// What the heat in the wall still does after the last burn.
     soak_back: SoakBackRow,
-    /// Differences against a log; none yet.
+    /// With a log: how far the readings are off; else null.
     log: Option<()>,
+    /// Clock from which the hottest and the coolest point stay within 1 K; null with never and beyond-100-h.
     evened_out_s: Option<f64>,
+    /// Whether the wall evens out.
+    #[schemars(extend("enum" = ["evens-out", "never", "beyond-100-h"]))]
     evened_out_state: &'static str,
+    /// If the last burn went on for ever, everything of that phase held.
     steady: SteadyRow,
+    /// The cool-down questions.
     waits: Vec<WaitRow<'a>>,
+    /// The heat ledger, per area of the hot face, to computed_until_s.
     energy: EnergyRow,
+    /// How it was computed, and how far it may be off.
     numerical: NumericalRow,
 }
 
@@ -182,24 +227,40 @@ impl<'a> StationRow<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct PlaceRow {
+    /// Highest temperature over all time and depth.
     #[serde(rename = "peak_K")]
     peak: f64,
+    /// When.
     peak_s: f64,
+    /// In which phase; at a phase change the ending one.
+    #[schemars(extend("enum" = ["burn", "hold", "shutdown"]))]
     peak_phase: &'static str,
+    /// At which depth from the hot face.
     peak_depth_m: f64,
+    /// The limit; null if there is none.
     #[serde(rename = "limit_K")]
     limit: Option<f64>,
+    /// What the limit protects.
+    #[schemars(extend("enum" = ["service", "strength", "melting", "bond", "seal", "propellant", null]))]
     limit_kind: Option<&'static str>,
+    /// Whose limit it is.
+    #[schemars(extend("enum" = ["case", "library", null]))]
     limit_from: Option<&'static str>,
+    /// What [allowance] takes off it.
     #[serde(rename = "allowance_K")]
     allowance: Option<f64>,
+    /// limit_K - allowance_K - peak_K.
     #[serde(rename = "margin_K")]
     margin: Option<f64>,
+    /// Clock at which the limit is first passed; null if never.
     first_over_s: Option<f64>,
+    /// Total time above the limit.
     time_over_limit_s: Option<f64>,
+    /// Total time allowed above it.
     allowed_over_s: Option<f64>,
+    /// Whether the limit is kept.
     kept: Option<bool>,
 }
 
@@ -224,9 +285,11 @@ impl PlaceRow {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct LayerRow<'a> {
+    /// Name of the layer.
     name: &'a str,
+    /// Its material.
     material: &'a str,
     #[serde(flatten)]
     at: PlaceRow,
@@ -242,8 +305,9 @@ impl<'a> LayerRow<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct JointRow<'a> {
+    /// The two layers, the inner first.
     between: [&'a str; 2],
     #[serde(flatten)]
     at: PlaceRow,
@@ -258,13 +322,18 @@ impl<'a> JointRow<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct ProbeRow<'a> {
+    /// Name of the probe.
     name: &'a str,
+    /// Depth from the hot face.
     depth_m: f64,
+    /// Highest reading.
     #[serde(rename = "peak_K")]
     peak: f64,
+    /// When.
     peak_s: f64,
+    /// Highest temperature at its place, without its lag.
     #[serde(rename = "peak_true_K")]
     peak_true: f64,
 }
@@ -281,25 +350,36 @@ impl<'a> ProbeRow<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct SoakBackRow {
+    /// How much hotter the outer face still gets after the end of the last burn; 0 if it only cools.
     #[serde(rename = "outer_face_rise_K")]
     outer_face_rise: f64,
+    /// When; last_burn_end_s if it only cools.
     outer_face_peak_s: f64,
+    /// Latest peak of any point that gets at least 1 K hotter after the last burn; null if there is none.
     last_peak_s: Option<f64>,
+    /// Its depth from the hot face.
     last_peak_depth_m: Option<f64>,
 }
 
-#[derive(Debug, Default, Serialize)]
+#[derive(Debug, Default, Serialize, JsonSchema)]
 struct SteadyRow {
+    /// Whether there is a steady state; false for a log, or where nothing balances the heat.
     exists: bool,
+    /// Hot face in the steady state.
     #[serde(rename = "hot_face_K")]
     hot_face: Option<f64>,
+    /// Outer face in the steady state.
     #[serde(rename = "outer_face_K")]
     outer_face: Option<f64>,
+    /// (T at the end of the burn - start)/(steady - start); null if that is below 1 K.
     hot_face_reached: Option<f64>,
+    /// The same of the outer face.
     outer_face_reached: Option<f64>,
+    /// Of that endless burn, until both faces have 95 %.
     time_to_95_percent_s: Option<f64>,
+    /// Whether the steady state, the way to it and the soak-back from it keep every limit.
     within_limits: Option<bool>,
 }
 
@@ -320,16 +400,24 @@ impl SteadyRow {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct WaitRow<'a> {
+    /// Name of the question.
     name: &'a str,
+    /// Where.
     #[serde(rename = "where")]
     place: &'a str,
+    /// The temperature to stay below.
     #[serde(rename = "below_K")]
     below: f64,
+    /// What came out.
+    #[schemars(extend("enum" = ["cools", "stays-below", "never", "beyond-100-h"]))]
     state: &'static str,
+    /// From the end of the last burn (no burn: from 0) to the last time the place comes down to the value; 0 with stays-below, null with never and beyond-100-h.
     wait_s: Option<f64>,
+    /// The same as a clock.
     clock_s: Option<f64>,
+    /// How much longer for each K lower.
     #[serde(rename = "slope_s_per_K")]
     slope: Option<f64>,
 }
@@ -354,25 +442,34 @@ impl<'a> WaitRow<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct EnergyRow {
+    /// Net heat into the hot face.
     #[serde(rename = "in_J_per_m2")]
     in_: f64,
+    /// Heat into the hot face, without what it gave back.
     #[serde(rename = "gross_in_J_per_m2")]
     gross_in: f64,
+    /// Net heat out of the outer face.
     #[serde(rename = "out_J_per_m2")]
     out: f64,
+    /// Heat out of the outer face, without what it took back.
     #[serde(rename = "gross_out_J_per_m2")]
     gross_out: f64,
+    /// Heat stored in the wall.
     #[serde(rename = "stored_J_per_m2")]
     stored: f64,
+    /// (in - out - stored) against the heat turned over: bookkeeping, not accuracy.
     imbalance: f64,
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct NumericalRow {
+    /// Nodes through the wall.
     nodes: usize,
+    /// Time steps.
     steps: usize,
+    /// Estimated numerical error of the temperatures.
     #[serde(rename = "estimated_error_K")]
     estimated_error: f64,
 }

@@ -126,7 +126,7 @@ fn peaks_table(answers: &RunAnswers, station: &StationAnswers, figures: Figures)
         let (limit, whose, margin, kept) = match &place.limit {
             None => ("none".into(), Cell::from(""), "".into(), Cell::from("")),
             Some(limit) => (
-                figures.given(limit.limit),
+                figures.limit(limit.limit),
                 Cell::from(whose(limit)),
                 figures.margin(limit.margin),
                 kept(limit),

@@ -89,8 +89,8 @@ struct Extremum {
     temperature: Kelvin,
 }
 
-/// Below this the temperature of a node can't have left the range of its ends by enough to matter, K.
-const UNSEEN: f64 = 1e-3;
+/// A node that leaves the range of a step's ends by less than this is taken to peak at the end, K.
+const UNSEEN: f64 = 2e-5;
 
 impl Watcher {
     /// Watches these quantities and levels; what happens from `last_burn_end` on counts as after the last burn.
@@ -243,8 +243,9 @@ impl Watcher {
         let mut extrema = Vec::new();
         for node in 0..self.temperatures.len() {
             let (start, end) = (step.rate_before[node][0], step.rate_after[node][0]);
-            // A curve that turns inside the step leaves the range of its ends by less than its steepest slope over the step.
-            if start * end < 0.0 && start.abs().max(end.abs()) * length > UNSEEN {
+            // A parabola with these slopes at its ends leaves the range of its ends by this much.
+            let (steep, flat) = (start.abs().max(end.abs()), start.abs().min(end.abs()));
+            if start * end < 0.0 && flat * flat * length > 2.0 * UNSEEN * (steep + flat) {
                 let theta = bracketed_root(|theta| step.slope(node, theta)[0], 0.0, 1.0, 1e-9);
                 if theta > 0.0 && theta < 1.0 {
                     extrema.push(Extremum {
@@ -301,15 +302,11 @@ impl Watcher {
         for (level, crossings) in self.levels.iter().zip(&mut self.crossings) {
             let quantity = self.quantities[level.quantity];
             let (start, end) = (before[level.quantity], self.values[level.quantity]);
-            // Where inside the step it may stand above or below both ends.
-            let turns = turns(quantity, moment, extrema);
+            let turns = turns(quantity, level.value, [start, end], moment, extrema);
             if turns.is_empty() && start <= level.value && end <= level.value {
                 continue;
             }
-            let mut stops = Vec::with_capacity(turns.len() + 1);
-            for theta in turns {
-                stops.push((theta, value_at(quantity, moment, theta)));
-            }
+            let mut stops: Vec<(f64, f64)> = turns.into_iter().map(|theta| (theta, value_at(quantity, moment, theta))).collect();
             stops.push((1.0, end));
             let (mut theta, mut above) = (0.0, start > level.value);
             // A level that was reached from above and never left counts as it did before.
@@ -446,19 +443,37 @@ fn own_turn(quantity: Quantity, moment: &Moment<'_>, extrema: &[Extremum]) -> Op
     (change(0.0) * change(1.0) < 0.0).then(|| bracketed_root(change, 0.0, 1.0, 1e-9))
 }
 
-/// Where inside the step a quantity may stand outside the range of its ends, in order.
-fn turns(quantity: Quantity, moment: &Moment<'_>, extrema: &[Extremum]) -> Vec<f64> {
+/// Where inside the step a quantity may stand on the other side of a level than at both ends, in order. The hottest of several nodes is only
+/// looked at where one of them turns above a level that both ends keep: that it dips below in between takes all of them at once.
+fn turns(quantity: Quantity, level: f64, [start, end]: [f64; 2], moment: &Moment<'_>, extrema: &[Extremum]) -> Vec<f64> {
     let nodes = match quantity {
         Quantity::Place(Place::Probe(_)) | Quantity::Truth(_) => return own_turn(quantity, moment, extrema).into_iter().collect(),
         Quantity::Place(place) => moment.map().nodes(place),
         Quantity::Coolest(layer) => moment.map().layers[layer].clone(),
         Quantity::Spread => 0..=moment.map().len() - 1,
     };
-    let mut turns: Vec<f64> = extrema
-        .iter()
-        .filter(|extremum| nodes.contains(&extremum.node))
-        .map(|extremum| extremum.theta)
-        .collect();
+    let mut turning = extrema.iter().filter(|extremum| nodes.contains(&extremum.node)).peekable();
+    if turning.peek().is_none() {
+        return Vec::new();
+    }
+    if nodes.start() != nodes.end() {
+        if start.max(end) > level {
+            return Vec::new();
+        }
+        let (low, high) = turning.clone().fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), extremum| {
+            (low.min(extremum.temperature), high.max(extremum.temperature))
+        });
+        let most = match quantity {
+            Quantity::Place(_) | Quantity::Truth(_) => high,
+            Quantity::Coolest(_) => -low,
+            // What turns may have left the range of its ends by no more than the nodes that turn.
+            Quantity::Spread => start.max(end) + (high - low),
+        };
+        if most <= level {
+            return Vec::new();
+        }
+    }
+    let mut turns: Vec<f64> = turning.map(|extremum| extremum.theta).collect();
     turns.sort_by(f64::total_cmp);
     turns
 }

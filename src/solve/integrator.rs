@@ -21,7 +21,7 @@ impl Settings {
     pub fn with_tolerance(tolerance: f64) -> Self {
         Self {
             tolerance,
-            growth: 8.0,
+            growth: 10.0,
             safety: 0.9,
             most_steps: 1_000_000,
         }
@@ -85,6 +85,9 @@ pub struct Integrator<const L: usize> {
     rate_next: Vec<Slot<L>>,
     rate_of_time: Vec<Slot<L>>,
     trial: Vec<Slot<L>>,
+    /// What earlier stages add to the right-hand side of the next.
+    earlier: Vec<Slot<L>>,
+    follower_earlier: Vec<Slot<L>>,
     follower_rate: Vec<Slot<L>>,
     follower_rate_next: Vec<Slot<L>>,
     follower_rate_of_time: Vec<Slot<L>>,
@@ -110,7 +113,9 @@ impl<const L: usize> Integrator<L> {
             rate_next: zeros.clone(),
             rate_of_time: zeros.clone(),
             matrix: Tridiagonal::new(zeros.len()),
+            earlier: zeros.clone(),
             trial: zeros,
+            follower_earlier: few.clone(),
             follower_rate: few.clone(),
             follower_rate_next: few.clone(),
             follower_rate_of_time: few.clone(),
@@ -221,10 +226,10 @@ impl<const L: usize> Integrator<L> {
         }
     }
 
-    /// The first step after a jump: short enough that no unknown moves by more than twenty tolerances, by its rate (the jump of the flux into the
+    /// The first step after a jump: short enough that no unknown moves by more than thirty tolerances, by its rate (the jump of the flux into the
     /// outermost cell) or by the growth of its rate.
     fn first_step<S: System<L>>(&self, system: &S, settings: &Settings, length: Slot<L>, depends_on_time: bool) -> Result<f64, SolveError> {
-        let allowed = 20.0 * settings.tolerance;
+        let allowed = 30.0 * settings.tolerance;
         let mut size: f64 = 1.0;
         let weights = system.weights();
         for (i, weight) in weights.iter().enumerate() {
@@ -255,25 +260,14 @@ impl<const L: usize> Integrator<L> {
                 stage.copy_from_slice(&self.rate);
                 follower_stage.copy_from_slice(&self.follower_rate);
             } else {
-                if k < 6 {
-                    combine(&self.unknowns, done, &A[k], &mut self.trial);
-                    combine(&self.followers, followers_done, &A[k], &mut self.follower_trial);
-                } else {
-                    add(&mut self.trial, &done[k - 1]);
-                    add(&mut self.follower_trial, &followers_done[k - 1]);
-                }
+                // One pass over the earlier stages gives both the argument of this one and what they add to its right-hand side.
+                sums(k, &self.unknowns, done, &mut self.trial, &mut self.earlier);
+                sums(k, &self.followers, followers_done, &mut self.follower_trial, &mut self.follower_earlier);
                 system.rate(share + ALPHA[k] * trial, &self.trial, &self.follower_trial, stage, follower_stage);
             }
-            scale(stage, step);
-            scale(follower_stage, step);
-            if depends_on_time && GAMMA_SUM[k] != 0.0 {
-                add_scaled(stage, &self.rate_of_time, GAMMA_SUM[k], step);
-                add_scaled(follower_stage, &self.follower_rate_of_time, GAMMA_SUM[k], step);
-            }
-            if k > 0 {
-                accumulate(done, &C[k], stage);
-                accumulate(followers_done, &C[k], follower_stage);
-            }
+            let bend = if depends_on_time { GAMMA_SUM[k] } else { 0.0 };
+            right_hand_side(stage, &self.earlier, &self.rate_of_time, k > 0, bend, step);
+            right_hand_side(follower_stage, &self.follower_earlier, &self.follower_rate_of_time, k > 0, bend, step);
             self.matrix.solve(stage);
             system.drive(stage, &mut self.driven);
             for ((value, driven), decay) in follower_stage.iter_mut().zip(&self.driven).zip(system.decay()) {
@@ -288,59 +282,74 @@ impl<const L: usize> Integrator<L> {
     }
 }
 
-/// out = base + Σ coefficient · stage.
-fn combine<const L: usize>(base: &[Slot<L>], stages: &[Vec<Slot<L>>], coefficients: &[f64; 7], out: &mut [Slot<L>]) {
-    out.copy_from_slice(base);
-    accumulate(stages, coefficients, out);
-}
-
-/// out += Σ coefficient · stage, in one pass over the unknowns.
-fn accumulate<const L: usize>(stages: &[Vec<Slot<L>>], coefficients: &[f64; 7], out: &mut [Slot<L>]) {
-    fn pass<const K: usize>(stages: &[&[f64]; K], coefficients: &[f64], out: &mut [f64]) {
-        let len = out.len();
+/// The argument of stage `k` and what the earlier stages add to its right-hand side, in one pass over them.
+fn sums<const L: usize>(k: usize, base: &[Slot<L>], stages: &[Vec<Slot<L>>], argument: &mut [Slot<L>], earlier: &mut [Slot<L>]) {
+    fn pass<const K: usize>(base: &[f64], stages: [&[f64]; K], k: usize, argument: &mut [f64], earlier: &mut [f64]) {
+        let len = base.len();
         let stages = stages.map(|stage| &stage[..len]);
-        let coefficients: [f64; K] = std::array::from_fn(|k| coefficients[k]);
+        let (argument, earlier) = (&mut argument[..len], &mut earlier[..len]);
+        let [a, c] = [&A[k], &C[k]].map(|row| std::array::from_fn::<f64, K, _>(|j| row[j]));
         for i in 0..len {
-            let mut sum = out[i];
-            for k in 0..K {
-                sum += coefficients[k] * stages[k][i];
+            let mut point = base[i];
+            let mut sum = 0.0;
+            for j in 0..K {
+                let value = stages[j][i];
+                point += a[j] * value;
+                sum += c[j] * value;
             }
-            out[i] = sum;
+            argument[i] = point;
+            earlier[i] = sum;
         }
     }
-    let out = out.as_flattened_mut();
-    let flat = |k: usize| stages[k].as_flattened();
-    match stages.len() {
-        1 => pass(&[flat(0)], coefficients, out),
-        2 => pass(&[flat(0), flat(1)], coefficients, out),
-        3 => pass(&[flat(0), flat(1), flat(2)], coefficients, out),
-        4 => pass(&[flat(0), flat(1), flat(2), flat(3)], coefficients, out),
-        5 => pass(&[flat(0), flat(1), flat(2), flat(3), flat(4)], coefficients, out),
-        6 => pass(&[flat(0), flat(1), flat(2), flat(3), flat(4), flat(5)], coefficients, out),
-        7 => pass(&[flat(0), flat(1), flat(2), flat(3), flat(4), flat(5), flat(6)], coefficients, out),
-        _ => {}
+    let base = base.as_flattened();
+    let (argument, earlier) = (argument.as_flattened_mut(), earlier.as_flattened_mut());
+    let flat = |j: usize| stages[j].as_flattened();
+    match k {
+        1 => pass(base, [flat(0)], k, argument, earlier),
+        2 => pass(base, [flat(0), flat(1)], k, argument, earlier),
+        3 => pass(base, [flat(0), flat(1), flat(2)], k, argument, earlier),
+        4 => pass(base, [flat(0), flat(1), flat(2), flat(3)], k, argument, earlier),
+        5 => pass(base, [flat(0), flat(1), flat(2), flat(3), flat(4)], k, argument, earlier),
+        6 => pass(base, [flat(0), flat(1), flat(2), flat(3), flat(4), flat(5)], k, argument, earlier),
+        _ => pass(
+            base,
+            [flat(0), flat(1), flat(2), flat(3), flat(4), flat(5), flat(6)],
+            k,
+            argument,
+            earlier,
+        ),
+    }
+}
+
+/// h · rate, what earlier stages add to it, and the time derivative's share.
+fn right_hand_side<const L: usize>(
+    stage: &mut [Slot<L>],
+    earlier: &[Slot<L>],
+    rate_of_time: &[Slot<L>],
+    has_earlier: bool,
+    bend: f64,
+    step: Slot<L>,
+) {
+    let len = stage.len();
+    let (earlier, rate_of_time) = (&earlier[..len], &rate_of_time[..len]);
+    for i in 0..len {
+        for l in 0..L {
+            let added = if has_earlier { earlier[i][l] } else { 0.0 };
+            stage[i][l] = step[l] * stage[i][l] + added;
+        }
+    }
+    if bend != 0.0 {
+        for i in 0..len {
+            for l in 0..L {
+                stage[i][l] += bend * step[l] * step[l] * rate_of_time[i][l];
+            }
+        }
     }
 }
 
 fn add<const L: usize>(out: &mut [Slot<L>], stage: &[Slot<L>]) {
     for (out, stage) in out.as_flattened_mut().iter_mut().zip(stage.as_flattened()) {
         *out += stage;
-    }
-}
-
-fn scale<const L: usize>(out: &mut [Slot<L>], step: Slot<L>) {
-    for out in out {
-        for l in 0..L {
-            out[l] *= step[l];
-        }
-    }
-}
-
-fn add_scaled<const L: usize>(out: &mut [Slot<L>], rate_of_time: &[Slot<L>], weight: f64, step: Slot<L>) {
-    for (out, rate) in out.iter_mut().zip(rate_of_time) {
-        for l in 0..L {
-            out[l] += weight * step[l] * step[l] * rate[l];
-        }
     }
 }
 

@@ -90,44 +90,51 @@ impl<const L: usize> Tridiagonal<L> {
     pub fn solve(&self, x: &mut [Slot<L>]) {
         let len = x.len();
         let half = len / 2;
-        let (multiplier, inverse, back) = (&self.multiplier[..len], &self.inverse[..len], &self.back[..len]);
-        let mut left = x[0];
-        let mut right = x[len - 1];
-        let forward = |i: usize, carried: &mut Slot<L>, x: &mut [Slot<L>]| {
-            for l in 0..L {
-                carried[l] = x[i][l] - multiplier[i][l] * carried[l];
-            }
-            x[i] = *carried;
-        };
+        let rest = len - half;
+        let (x_left, x_right) = x.split_at_mut(half);
+        let [multiplier, inverse, back] = [&self.multiplier, &self.inverse, &self.back].map(|values| values[..len].split_at(half));
+        // Slices of equal, named lengths: one bound serves them all. Both sides at once, each carried in registers; the right side may be longer by
+        // one row, which comes last inwards and first outwards.
+        let (multiplier_left, inverse_left, back_left) = (&multiplier.0[..half], &inverse.0[..half], &back.0[..half]);
+        let (multiplier_right, inverse_right, back_right) = (&multiplier.1[..rest], &inverse.1[..rest], &back.1[..rest]);
+        let (x_left, x_right) = (&mut x_left[..half], &mut x_right[..rest]);
+        let mut left = x_left[0];
+        let mut right = x_right[rest - 1];
         for i in 1..half {
-            forward(i, &mut left, x);
-            let j = len - 1 - i;
-            if j >= half {
-                forward(j, &mut right, x);
-            }
-        }
-        if len - half > half {
-            forward(half, &mut right, x);
-        }
-        let (first, second) = (left, right);
-        for l in 0..L {
-            left[l] = self.middle[0][l] * first[l] + self.middle[1][l] * second[l];
-            right[l] = self.middle[2][l] * first[l] + self.middle[3][l] * second[l];
-        }
-        x[half - 1] = left;
-        x[half] = right;
-        let backward = |i: usize, carried: &mut Slot<L>, x: &mut [Slot<L>]| {
+            let j = rest - 1 - i;
             for l in 0..L {
-                carried[l] = x[i][l] * inverse[i][l] + back[i][l] * carried[l];
+                left[l] = x_left[i][l] - multiplier_left[i][l] * left[l];
+                right[l] = x_right[j][l] - multiplier_right[j][l] * right[l];
             }
-            x[i] = *carried;
-        };
-        for k in 1..half {
-            backward(half - 1 - k, &mut left, x);
-            backward(half + k, &mut right, x);
+            x_left[i] = left;
+            x_right[j] = right;
         }
-        if len - half > half {
-            backward(len - 1, &mut right, x);
+        if rest > half {
+            for l in 0..L {
+                right[l] = x_right[0][l] - multiplier_right[0][l] * right[l];
+            }
+        }
+        for l in 0..L {
+            let (first, second) = (left[l], right[l]);
+            left[l] = self.middle[0][l] * first + self.middle[1][l] * second;
+            right[l] = self.middle[2][l] * first + self.middle[3][l] * second;
+        }
+        x_left[half - 1] = left;
+        x_right[0] = right;
+        if rest > half {
+            for l in 0..L {
+                right[l] = x_right[1][l] * inverse_right[1][l] + back_right[1][l] * right[l];
+            }
+            x_right[1] = right;
+        }
+        for k in 1..half {
+            let (i, j) = (half - 1 - k, rest - half + k);
+            for l in 0..L {
+                left[l] = x_left[i][l] * inverse_left[i][l] + back_left[i][l] * left[l];
+                right[l] = x_right[j][l] * inverse_right[j][l] + back_right[j][l] * right[l];
+            }
+            x_left[i] = left;
+            x_right[j] = right;
         }
     }
 }

@@ -102,7 +102,7 @@ pub const FACTORS: &[Factor] = &[
 ];
 
 /// Other spellings that are read: written name, name in the table.
-const READ_AS: &[(&str, &str)] = &[("C", "degC"), ("°C", "degC"), ("F", "degF"), ("°F", "degF")];
+pub(super) const READ_AS: &[(&str, &str)] = &[("C", "degC"), ("°C", "degC"), ("F", "degF"), ("°F", "degF")];
 
 /// Spellings that are not read, and what was meant.
 const MEANT: &[(&str, &str)] = &[

@@ -7,6 +7,7 @@ mod error;
 mod factors;
 mod kind;
 mod parse;
+mod pattern;
 mod read;
 
 pub use dimension::Dimension;
@@ -14,6 +15,7 @@ pub use error::{UnitError, UnitProblem};
 pub use factors::{FACTORS, Factor, nearest_factor};
 pub use kind::Kind;
 pub use parse::{read, read_spread};
+pub use pattern::Sign;
 pub use read::{
     read_area, read_conductivity, read_density, read_heat_capacity, read_heat_flux, read_heat_transfer, read_length, read_pressure, read_temperature,
     read_temperature_difference, read_time, read_velocity,

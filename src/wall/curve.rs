@@ -52,6 +52,8 @@ pub(crate) struct Share<'a> {
     pub volume: Metres,
 }
 
+/// Curves of no more segments than this are searched by counting.
+const FEW: usize = 6;
 /// Most bins of a curve; the bins are as narrow as the closest knots, up to this.
 const MOST_BINS: f64 = 4096.0;
 
@@ -142,27 +144,51 @@ impl Curve {
     /// What an unknown says.
     #[inline]
     pub fn point(&self, unknown: f64) -> Point {
-        let segment = self.segment(unknown);
-        let along = unknown - segment.unknown;
-        // The root of along = x (c₀ + c₁ x / 2) that does not cancel.
-        let root = (segment.capacity[0] * segment.capacity[0] + 2.0 * segment.capacity[1] * along)
-            .max(0.0)
-            .sqrt();
-        let x = 2.0 * along / (segment.capacity[0] + root);
-        let by_unknown = 1.0 / root;
+        let (segment, x) = self.place(unknown);
+        let by_unknown = 1.0 / (segment.capacity[0] + segment.capacity[1] * x);
         Point {
             temperature: segment.temperature + x,
             by_unknown,
-            inner: segment.inner[2] + x * (segment.inner[0] + 0.5 * segment.inner[1] * x),
+            inner: segment.potential(segment.inner, x),
             inner_by_unknown: (segment.inner[0] + segment.inner[1] * x) * by_unknown,
-            outer: segment.outer[2] + x * (segment.outer[0] + 0.5 * segment.outer[1] * x),
+            outer: segment.potential(segment.outer, x),
             outer_by_unknown: (segment.outer[0] + segment.outer[1] * x) * by_unknown,
         }
     }
 
+    /// Temperature and both potentials that an unknown says.
+    #[inline]
+    pub fn values(&self, unknown: f64) -> [f64; 3] {
+        let (segment, x) = self.place(unknown);
+        [
+            segment.temperature + x,
+            segment.potential(segment.inner, x),
+            segment.potential(segment.outer, x),
+        ]
+    }
+
+    /// The segment that an unknown lies in, and how many kelvin from its start.
+    #[inline]
+    fn place(&self, unknown: f64) -> (&Segment, f64) {
+        let segment = self.segment(unknown);
+        let along = unknown - segment.unknown;
+        let x = if segment.capacity[1] == 0.0 {
+            along / segment.capacity[0]
+        } else {
+            // The root of along = x (c₀ + c₁ x / 2) that does not cancel.
+            2.0 * along
+                / (segment.capacity[0]
+                    + (segment.capacity[0] * segment.capacity[0] + 2.0 * segment.capacity[1] * along)
+                        .max(0.0)
+                        .sqrt())
+        };
+        (segment, x)
+    }
+
     /// The temperature that an unknown says.
     pub fn temperature(&self, unknown: f64) -> Kelvin {
-        self.point(unknown).temperature
+        let (segment, x) = self.place(unknown);
+        segment.temperature + x
     }
 
     /// The unknown at a temperature.
@@ -177,7 +203,12 @@ impl Curve {
 
     #[inline]
     fn segment(&self, unknown: f64) -> &Segment {
-        if unknown < self.first || self.segments.len() == 1 {
+        if self.segments.len() <= FEW {
+            // Counting is quicker than looking up where there is little to count.
+            let passed = self.segments[1..].iter().filter(|segment| unknown >= segment.unknown).count();
+            return &self.segments[passed];
+        }
+        if unknown < self.first {
             return &self.segments[0];
         }
         let bin = ((unknown - self.first) * self.bins_per_unknown) as usize;
@@ -190,13 +221,18 @@ impl Curve {
 }
 
 impl Segment {
+    /// A potential (conductivity, its slope, potential at the knot) at `x` kelvin from its start.
+    #[inline]
+    fn potential(&self, [value, slope, start]: [f64; 3], x: f64) -> f64 {
+        start + x * (value + 0.5 * slope * x)
+    }
+
     /// Unknown and both potentials at `x` kelvin from its start.
     fn at(&self, x: f64) -> (f64, f64, f64) {
-        let parabola = |value: f64, slope: f64| x * (value + 0.5 * slope * x);
         (
-            self.unknown + parabola(self.capacity[0], self.capacity[1]),
-            self.inner[2] + parabola(self.inner[0], self.inner[1]),
-            self.outer[2] + parabola(self.outer[0], self.outer[1]),
+            self.potential([self.capacity[0], self.capacity[1], self.unknown], x),
+            self.potential(self.inner, x),
+            self.potential(self.outer, x),
         )
     }
 }

@@ -2,9 +2,9 @@
 
 use super::curve::Share;
 use super::{Curve, Forcing, Grid, NodeMap, Over};
-use crate::heat::{convected, gap_flux, grey_exchange};
+use crate::heat::{TabulatedCoefficient, convected, gap_flux, grey_exchange};
 use crate::model::{
-    Convection, Gap, Kelvin, Losses, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table, WattsPerSquareMetre,
+    Convection, Gap, Kelvin, Losses, NaturalSurface, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table, WattsPerSquareMetre,
 };
 use crate::solve::{Slot, System, Tridiagonal};
 use std::ops::RangeInclusive;
@@ -60,12 +60,16 @@ struct Faces {
     surroundings: Surroundings,
     idle_emissivity: Table,
     outside: Outside,
+    /// Its convection as a table, where that is smooth.
+    natural: Option<TabulatedCoefficient>,
     /// Outer area per hot-face area.
     outer_area: f64,
     /// Area that a shown flux out of the wall is divided by: the outer face, of a bar its section at the heated end.
     shown_area: f64,
     /// What the sides lose, layer by layer; empty except in a bar.
     sides: Vec<Losses>,
+    /// Their convection as tables, where that is smooth.
+    side_natural: Vec<Option<TabulatedCoefficient>>,
 }
 
 /// A lagging probe, as a follower.
@@ -176,8 +180,13 @@ impl<const L: usize> Wall<L> {
                 surroundings: surroundings.clone(),
                 idle_emissivity: station.idle.emissivity.clone(),
                 outside: station.outer.outside.clone(),
+                natural: match &station.outer.outside {
+                    Outside::Open(losses) => tabulated(losses, surroundings),
+                    Outside::Fixed(_) | Outside::Adiabatic => None,
+                },
                 outer_area: station.outer_area(),
                 shown_area: if station.shape == Shape::Bar { 1.0 } else { station.outer_area() },
+                side_natural: station.sides.iter().map(|losses| tabulated(losses, surroundings)).collect(),
                 sides: station.sides.clone(),
             }
         });
@@ -361,7 +370,12 @@ impl<const L: usize> Wall<L> {
     #[inline]
     fn side_flux(&self, side: &SideFace<L>, member: usize, temperature: Kelvin) -> FluxAndSlope {
         let faces = &self.faces[member];
-        let (flux, slope) = outside_losses(&faces.sides[side.layer], &faces.surroundings, temperature);
+        let (flux, slope) = outside_losses(
+            &faces.sides[side.layer],
+            &faces.surroundings,
+            faces.side_natural[side.layer].as_ref(),
+            temperature,
+        );
         (flux * side.area[member], slope * side.area[member])
     }
 
@@ -369,8 +383,8 @@ impl<const L: usize> Wall<L> {
     fn conducted(&self, node: usize, member: usize, unknown: f64, next: f64) -> f64 {
         let point = |node: usize, unknown: f64| match self.curve_of[node] {
             Some(index) => {
-                let point = self.curved[index].curves[member].point(unknown);
-                (point.inner, point.outer)
+                let [_, inner, outer] = self.curved[index].curves[member].values(unknown);
+                (inner, outer)
             }
             None => (unknown, unknown),
         };
@@ -427,7 +441,7 @@ impl<const L: usize> Wall<L> {
         let Outside::Open(losses) = &faces.outside else { return (0.0, 0.0) };
         let (flux, slope) = match self.forcing[member].over {
             Over::Coolant { coefficient, temperature } => (coefficient * (face - temperature), coefficient),
-            Over::Losses => outside_losses(losses, &faces.surroundings, face),
+            Over::Losses => outside_losses(losses, &faces.surroundings, faces.natural.as_ref(), face),
         };
         (flux * faces.outer_area, slope * faces.outer_area)
     }
@@ -444,14 +458,16 @@ impl<const L: usize> Wall<L> {
         for group in &self.curved {
             for node in group.nodes.clone() {
                 for l in 0..L {
-                    let point = group.curves[l].point(unknowns[node][l]);
-                    self.temperature[node][l] = point.temperature;
-                    self.inner[node][l] = point.inner;
-                    self.outer[node][l] = point.outer;
                     if SLOPES {
+                        let point = group.curves[l].point(unknowns[node][l]);
+                        self.temperature[node][l] = point.temperature;
+                        self.inner[node][l] = point.inner;
+                        self.outer[node][l] = point.outer;
                         self.by_unknown[node][l] = point.by_unknown;
                         self.inner_by_unknown[node][l] = point.inner_by_unknown;
                         self.outer_by_unknown[node][l] = point.outer_by_unknown;
+                    } else {
+                        [self.temperature[node][l], self.inner[node][l], self.outer[node][l]] = group.curves[l].values(unknowns[node][l]);
                     }
                 }
             }
@@ -469,19 +485,24 @@ impl<const L: usize> Wall<L> {
             } else {
                 (&self.inner[..], &self.outer[..])
             };
-            let flux = &mut self.flux[1..=last];
-            for (((flux, conductance), hot), cold) in flux.iter_mut().zip(&self.conductance).zip(&outer[..last]).zip(&inner[1..=last]) {
-                for l in 0..L {
-                    flux[l] = conductance[l] * (hot[l] - cold[l]);
-                }
+            let count = last * L;
+            let flux = &mut self.flux[1..=last].as_flattened_mut()[..count];
+            let conductance = &self.conductance.as_flattened()[..count];
+            let (hot, cold) = (&outer[..last].as_flattened()[..count], &inner[1..=last].as_flattened()[..count]);
+            for i in 0..count {
+                flux[i] = conductance[i] * (hot[i] - cold[i]);
             }
         }
         if SLOPES {
-            for node in 0..last {
-                for l in 0..L {
-                    self.flux_by_before[node + 1][l] = self.conductance[node][l] * self.outer_by_unknown[node][l];
-                    self.flux_by_own[node + 1][l] = -self.conductance[node][l] * self.inner_by_unknown[node + 1][l];
-                }
+            let count = last * L;
+            let conductance = &self.conductance.as_flattened()[..count];
+            let outer = &self.outer_by_unknown[..last].as_flattened()[..count];
+            let inner = &self.inner_by_unknown[1..=last].as_flattened()[..count];
+            let by_before = &mut self.flux_by_before[1..=last].as_flattened_mut()[..count];
+            let by_own = &mut self.flux_by_own[1..=last].as_flattened_mut()[..count];
+            for i in 0..count {
+                by_before[i] = conductance[i] * outer[i];
+                by_own[i] = -conductance[i] * inner[i];
             }
         }
         for joint in &self.joints {
@@ -536,10 +557,13 @@ impl<const L: usize> Wall<L> {
 
     fn rates(&self, followers: &[Slot<L>], rate: &mut [Slot<L>], follower_rate: &mut [Slot<L>]) {
         let len = rate.len();
-        for (node, (rate, inverse)) in rate.iter_mut().zip(&self.inverse_capacity).enumerate() {
-            for l in 0..L {
-                rate[l] = (self.flux[node][l] - self.flux[node + 1][l]) * inverse[l];
-            }
+        // Lanes and nodes in one row: each node's flux from the hot side and, a node further, the flux it passes on.
+        let flux = self.flux.as_flattened();
+        let (received, passed_on) = (&flux[..len * L], &flux[L..(len + 1) * L]);
+        let inverse = &self.inverse_capacity.as_flattened()[..len * L];
+        let flat_rate = &mut rate.as_flattened_mut()[..len * L];
+        for i in 0..len * L {
+            flat_rate[i] = (received[i] - passed_on[i]) * inverse[i];
         }
         follower_rate[Ledger::Inward as usize] = self.flux[0];
         follower_rate[Ledger::Outward as usize] = self.flux[len];
@@ -589,13 +613,17 @@ impl<const L: usize> System<L> for Wall<L> {
     ) {
         self.fluxes::<true>(share, unknowns);
         self.rates(followers, rate, follower_rate);
-        for node in 0..unknowns.len() {
-            for l in 0..L {
-                let inverse = self.inverse_capacity[node][l];
-                jacobian.lower[node][l] = self.flux_by_before[node][l] * inverse;
-                jacobian.diagonal[node][l] = (self.flux_by_own[node][l] - self.flux_by_before[node + 1][l]) * inverse;
-                jacobian.upper[node][l] = -self.flux_by_own[node + 1][l] * inverse;
-            }
+        let count = unknowns.len() * L;
+        let inverse = &self.inverse_capacity.as_flattened()[..count];
+        let (by_before, by_own) = (self.flux_by_before.as_flattened(), self.flux_by_own.as_flattened());
+        let (by_before, passed_by_own) = (&by_before[..count], &by_before[L..count + L]);
+        let (by_own, passed_by_next) = (&by_own[..count], &by_own[L..count + L]);
+        let Tridiagonal { lower, diagonal, upper, .. } = jacobian;
+        let [lower, diagonal, upper] = [lower, diagonal, upper].map(|values| &mut values.as_flattened_mut()[..count]);
+        for i in 0..count {
+            lower[i] = by_before[i] * inverse[i];
+            diagonal[i] = (by_own[i] - passed_by_own[i]) * inverse[i];
+            upper[i] = -passed_by_next[i] * inverse[i];
         }
         for (node, slope) in self.side_by_own.iter().enumerate() {
             for l in 0..L {
@@ -717,13 +745,26 @@ fn radiated(face: Kelvin, surfaces: Kelvin) -> FluxAndSlope {
     )
 }
 
+/// A table of a convection whose correlation is smooth; those with a change of régime are evaluated as they are.
+fn tabulated(losses: &Losses, surroundings: &Surroundings) -> Option<TabulatedCoefficient> {
+    let smooth = matches!(
+        losses.convection,
+        Convection::Natural(NaturalSurface::Vertical(_) | NaturalSurface::HorizontalCylinder(_))
+    );
+    smooth.then(|| TabulatedCoefficient::new(surroundings.air, |face| convected(&losses.convection, surroundings, face)))
+}
+
 /// Heat from an outer face by convection and radiation, less the sun, per area of that face.
-pub(super) fn outside_losses(losses: &Losses, surroundings: &Surroundings, face: Kelvin) -> FluxAndSlope {
-    let (mut flux, mut slope) = match losses.convection {
-        Convection::None => (0.0, 0.0),
-        Convection::Coefficient(coefficient) => (coefficient * (face - surroundings.air), coefficient),
-        _ => {
-            let lost = convected(&losses.convection, surroundings, face);
+pub(super) fn outside_losses(losses: &Losses, surroundings: &Surroundings, natural: Option<&TabulatedCoefficient>, face: Kelvin) -> FluxAndSlope {
+    let (mut flux, mut slope) = match (&losses.convection, natural) {
+        (Convection::None, _) => (0.0, 0.0),
+        (Convection::Coefficient(coefficient), _) => (coefficient * (face - surroundings.air), *coefficient),
+        (_, Some(table)) => {
+            let lost = table.flux(face);
+            (lost.value, lost.slope)
+        }
+        (convection, None) => {
+            let lost = convected(convection, surroundings, face);
             (lost.value, lost.slope)
         }
     };

@@ -23,7 +23,7 @@ fn wall() -> Result<Model, ModelError> {
     let coating = material(1.0, 5600.0, 500.0)?;
     let liner = material(330.0, 8900.0, 390.0)?;
     let jacket = tabled(&[(293.15, 16.0), (1293.15, 32.0)], 8000.0, &[(300.0, 500.0)])?;
-    let air = Convection::natural_vertical(metres(0.3))?;
+    let air = Convection::Natural(NaturalSurface::vertical(metres(0.3))?);
     Wall {
         heating: film(4000.0, 3000.0)?,
         idle: Idle::new(coefficient(5.0), temperature(293.15), pure(0.8), 1.0)?,
@@ -57,7 +57,7 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
     let station = &model.stations()[0];
     let grid = Grid::uniform(&[20, 59, 19]);
     let segments = Timeline::of_profile(&model, station, Some(3600.0));
-    for step_tolerance in [0.05, 0.005] {
+    for step_tolerance in [0.1, 0.02] {
         let mut steps = 0;
         let mut hot_face = 0.0;
         let time = best(|| {

@@ -1,12 +1,14 @@
 //! Sections that later commands use: their names, units, ranges and paths are checked; then they say that nothing uses them yet.
 
+use super::profile::LoweredProfile;
 use super::station::LoweredStation;
 use super::{Input, InputValue, Lowering, Node, Table, Value};
 use crate::case::form::{Form, unit_mistake};
 use crate::case::keys::{Expect, NOT_NEGATIVE, POSITIVE};
 use crate::case::names;
-use crate::case::paths::{self, Target};
+use crate::case::paths::{self, PathError, Segment, Step, Target};
 use crate::case::settings::path_mistake;
+use crate::case::suggest;
 use crate::case::tree::Spot;
 use crate::units::{self, Kind};
 
@@ -17,18 +19,56 @@ enum Measure {
     Table,
 }
 
+/// What paths may name.
+#[derive(Clone, Copy)]
+struct Known<'a> {
+    root: &'a Node,
+    /// What is expected of each value of a ready profile; `None` where the profile has mistakes of its own.
+    values: Option<&'a [(String, &'static Expect)]>,
+}
+
+impl Known<'_> {
+    /// The same targets, those in `profile.values` with what the ready profile expects of the value.
+    fn values_of(&self, mut targets: Vec<Target>, segments: &[Segment]) -> Result<Vec<Target>, PathError> {
+        let Some(known) = self.values else { return Ok(targets) };
+        for target in &mut targets {
+            let [Step::Key(profile), Step::Key(values), Step::Key(name)] = target.steps.as_slice() else {
+                continue;
+            };
+            if profile != "profile" || values != "values" {
+                continue;
+            }
+            match known.iter().find(|value| value.0 == *name) {
+                Some(value) => target.expect = value.1,
+                None => {
+                    return Err(PathError {
+                        range: segments.last().map(|segment| segment.range.clone()).unwrap_or_default(),
+                        message: format!("the profile of this case has no value \"{name}\""),
+                        help: suggest::help(name, known.iter().map(|value| value.0.as_str())),
+                    });
+                }
+            }
+        }
+        Ok(targets)
+    }
+}
+
 impl Lowering<'_> {
-    pub(super) fn later(&mut self, root: &Node, stations: &[LoweredStation]) {
+    pub(super) fn later(&mut self, root: &Node, stations: &[LoweredStation], profile: Option<&LoweredProfile>) {
         let Some(case) = root.table() else { return };
+        let known = Known {
+            root,
+            values: profile.map(|profile| profile.values.as_slice()),
+        };
         self.engine(case);
-        self.variants(root, case);
+        self.variants(known, case);
         for (index, spread) in case.list("spread").unwrap_or_default().iter().enumerate() {
             if let Some(table) = spread.table() {
-                self.spread(root, table, &format!("spread.{index}"));
+                self.spread(known, table, &format!("spread.{index}"));
             }
         }
         if let Some(fit) = case.table("fit") {
-            self.fit(root, fit, stations);
+            self.fit(known, fit, stations);
         }
         let bartz = case.list("station").unwrap_or_default().iter().any(|station| {
             let heating = station.table().and_then(|station| station.table("heating"));
@@ -71,9 +111,10 @@ impl Lowering<'_> {
     }
 
     /// The targets of a path written in a text of the case.
-    fn targets(&mut self, root: &Node, node: &Node) -> Option<Vec<Target>> {
+    fn targets(&mut self, known: Known<'_>, node: &Node) -> Option<Vec<Target>> {
         let text = node.text()?;
-        match paths::split(text).and_then(|segments| paths::resolve(root, &segments)) {
+        let split = paths::split(text);
+        match split.and_then(|segments| paths::resolve(known.root, &segments).and_then(|targets| known.values_of(targets, &segments))) {
             Ok(targets) => Some(targets),
             Err(error) => {
                 let spot = node.inside(error.range.clone());
@@ -83,7 +124,7 @@ impl Lowering<'_> {
         }
     }
 
-    fn variants(&mut self, root: &Node, case: &Table) {
+    fn variants(&mut self, known: Known<'_>, case: &Table) {
         for variant in case.list("variant").unwrap_or_default() {
             let Some(set) = variant.table().and_then(|table| table.node("set")) else {
                 continue;
@@ -103,7 +144,7 @@ impl Lowering<'_> {
                     value: Value::Text(entry.key.clone()),
                     text_range: self.key_range(&entry.key, &entry.key_spot),
                 };
-                let Some(targets) = self.targets(root, &key) else { continue };
+                let Some(targets) = self.targets(known, &key) else { continue };
                 let Some(target) = targets.first() else { continue };
                 let mut value = entry.node.clone();
                 let mut form = Form {
@@ -123,10 +164,10 @@ impl Lowering<'_> {
     }
 
     /// What the input that a path names is measured in.
-    fn measure(&mut self, root: &Node, node: &Node) -> Option<Measure> {
-        let targets = self.targets(root, node)?;
+    fn measure(&mut self, known: Known<'_>, node: &Node) -> Option<Measure> {
+        let targets = self.targets(known, node)?;
         let target = targets.first()?;
-        let now = paths::value(root, target).map(|value| &value.value);
+        let now = paths::value(known.root, target).map(|value| &value.value);
         let measure = measure_of(target.expect, now);
         if measure.is_none() {
             let message = "this path names no number";
@@ -135,8 +176,8 @@ impl Lowering<'_> {
         measure
     }
 
-    fn spread(&mut self, root: &Node, table: &Table, path: &str) {
-        let measure = table.node("input").and_then(|input| self.measure(root, input));
+    fn spread(&mut self, known: Known<'_>, table: &Table, path: &str) {
+        let measure = table.node("input").and_then(|input| self.measure(known, input));
         let shape = table.text("shape");
         let needs_sigmas = matches!(shape, Some("normal" | "log-normal"));
         if let (true, false, Some(entry)) = (needs_sigmas, table.has("sigmas"), table.entry("shape")) {
@@ -160,7 +201,7 @@ impl Lowering<'_> {
                 value: Value::Text(entry.key.clone()),
                 text_range: self.key_range(&entry.key, &entry.key_spot),
             };
-            self.targets(root, &key);
+            self.targets(known, &key);
             let correlation = match entry.node.value {
                 #[expect(clippy::cast_precision_loss, reason = "checked against −1 … 1")]
                 Value::Integer(number) => number as f64,
@@ -251,10 +292,10 @@ impl Lowering<'_> {
         });
     }
 
-    fn fit(&mut self, root: &Node, fit: &Table, stations: &[LoweredStation]) {
+    fn fit(&mut self, known: Known<'_>, fit: &Table, stations: &[LoweredStation]) {
         for (index, free) in fit.list("free").unwrap_or_default().iter().enumerate() {
             let Some(table) = free.table() else { continue };
-            let Some(measure) = table.node("input").and_then(|input| self.measure(root, input)) else {
+            let Some(measure) = table.node("input").and_then(|input| self.measure(known, input)) else {
                 continue;
             };
             let expect = match measure {

@@ -28,7 +28,7 @@ impl Lowering<'_> {
 }
 
 /// The kind of a limit by its word; the form check let only these pass.
-fn kind_of(word: &str) -> LimitKind {
+pub(in crate::case) fn kind_of(word: &str) -> LimitKind {
     match word {
         "strength" => LimitKind::Strength,
         "melting" => LimitKind::Melting,

@@ -2,14 +2,14 @@
 
 use super::quantities::{density, temperature};
 use super::{Input, InputValue, Lowering, Node, Spot, Table, Value};
-use crate::case::form::Form;
-use crate::case::keys::MATERIAL;
-use crate::case::{library, names};
-use crate::model::{Limit, LimitOrigin, Material, MaterialValues, Table as Property};
+use crate::case::library::{self, Card};
+use crate::case::names;
+use crate::diagnostics::Diagnostic;
+use crate::model::{Limit, LimitOrigin, Material, MaterialValues, ModelError, Table as Property};
 use std::collections::BTreeMap;
 use std::sync::Arc;
 use uom::si::f64::{Ratio, SpecificHeatCapacity, ThermalConductivity};
-use uom::si::{ratio, specific_heat_capacity, thermal_conductivity};
+use uom::si::{Dimension, Quantity, SI, ratio, specific_heat_capacity, thermal_conductivity};
 
 /// A material and what layers take from it.
 #[derive(Clone, Debug)]
@@ -49,9 +49,9 @@ pub(super) struct Materials<'a> {
 }
 
 /// Properties in the order in which they are listed.
-const PROPERTIES: [&str; 7] = ["density", "heat_capacity", "conductivity", "emissivity", "limit", "melts", "decomposes"];
+pub(in crate::case) const PROPERTIES: [&str; 7] = ["density", "heat_capacity", "conductivity", "emissivity", "limit", "melts", "decomposes"];
 /// What a material can't be without.
-const NEEDED: [&str; 3] = ["density", "heat_capacity", "conductivity"];
+pub(in crate::case) const NEEDED: [&str; 3] = ["density", "heat_capacity", "conductivity"];
 
 impl<'a> Materials<'a> {
     pub fn new(case: &'a Table, start: f64) -> Self {
@@ -95,33 +95,35 @@ impl<'a> Materials<'a> {
     }
 }
 
-/// A shipped card, checked: its keys and the inputs they make.
-fn read_card(name: &str, lowering: &mut Lowering<'_>) -> Option<(Table, Vec<Input>)> {
-    let text = library::card(name)?;
-    let mut findings = super::Findings::default();
-    let source = findings.add_source(name, text);
-    let (table, errors) = toml::de::DeTable::parse_recoverable(text);
-    let mut table = Table::of(table.get_ref(), source, text);
-    let mut inputs = Vec::new();
-    let spot = Spot { source, range: 0..0 };
-    let path = names::join("material", name);
-    let mut form = Form {
-        findings: &mut findings,
-        inputs: &mut inputs,
-    };
-    form.section(&mut table, &MATERIAL, &spot, &path);
-    if !errors.is_empty() || findings.diagnostics.has_errors() {
-        // A test reads every shipped card, so this is not met in a released program; it is reported all the same.
-        let why: Vec<_> = findings.diagnostics.list.iter().map(|found| found.message.clone()).collect();
-        let found = crate::diagnostics::Diagnostic::error("library", format!("the built-in material \"{name}\" is damaged: {}", why.join("; ")));
-        lowering.findings.nowhere(found);
-        return None;
+/// A shipped card; a damaged one is reported.
+fn read_card(name: &str, lowering: &mut Lowering<'_>) -> Option<Card> {
+    match library::card(name)? {
+        Ok(card) => Some(card),
+        Err(why) => {
+            let found = Diagnostic::error("library", format!("the built-in material \"{name}\" is damaged: {why}"));
+            lowering.findings.nowhere(found);
+            None
+        }
     }
-    Some((table, inputs))
+}
+
+/// A property against temperature, of what the form check let pass; `None` where it did not.
+pub(in crate::case) fn property<D: Dimension + ?Sized>(
+    node: &Node,
+    quantity: impl Fn(f64) -> Quantity<D, SI<f64>, f64>,
+) -> Option<Result<Property, ModelError>> {
+    match &node.value {
+        Value::Number(number) => Some(Ok(Property::constant(quantity(*number)))),
+        Value::Points(points) => {
+            let points: Vec<_> = points.iter().map(|(kelvin, value)| (temperature(*kelvin), quantity(*value))).collect();
+            Some(Property::new(&points))
+        }
+        _ => None,
+    }
 }
 
 /// What a card or a case says about one property, or about the whole material.
-fn said<'t>(table: &'t Table, key: &str, property: &str) -> Option<&'t str> {
+pub(in crate::case) fn said<'t>(table: &'t Table, key: &str, property: &str) -> Option<&'t str> {
     let node = table.node(key)?;
     node.text().or_else(|| node.table()?.text(property))
 }
@@ -131,7 +133,7 @@ impl Lowering<'_> {
         let own_table = own.and_then(Node::table);
         let whole = own_table.is_some_and(|table| NEEDED.iter().all(|key| table.has(key)));
         let card = if whole { None } else { read_card(name, self) };
-        if whole && library::card(name).is_some() {
+        if whole && library::has(name) {
             let text = format!("the case's own material \"{name}\" takes the place of the built-in one of this name");
             self.findings.notice("material-replaced", text, None, None);
         }
@@ -151,14 +153,14 @@ impl Lowering<'_> {
             self.findings.notice("material-changed", text, None, None);
         }
         let merged = match &card {
-            Some((card, _)) => own_table.map_or_else(|| card.clone(), |own| own.over(card)),
+            Some(card) => own_table.map_or_else(|| card.table.clone(), |own| own.over(&card.table)),
             None => own_table?.clone(),
         };
         let pick = |key: &str| merged.node(key);
-        if let Some((table, inputs)) = &card {
-            self.list_card(name, table, inputs, own_table);
+        if let Some(card) = &card {
+            self.list_card(name, card, own_table);
         }
-        self.tell_confidence(name, own_table, card.as_ref().map(|card| &card.0));
+        self.tell_confidence(name, own_table, card.as_ref().map(|card| &card.table));
         let heat_capacity = pick("heat_capacity").and_then(|node| self.heat_capacity(node));
         let conductivity = pick("conductivity").and_then(|node| self.conductivity(node));
         let emissivity = match pick("emissivity") {
@@ -191,7 +193,7 @@ impl Lowering<'_> {
     }
 
     /// Lists what is taken from a card, with its source and how far to trust it.
-    fn list_card(&mut self, name: &str, card: &Table, inputs: &[Input], own: Option<&Table>) {
+    fn list_card(&mut self, name: &str, card: &Card, own: Option<&Table>) {
         let path = names::join("material", name);
         for property in PROPERTIES {
             let given = own.and_then(|own| own.node(property));
@@ -199,8 +201,8 @@ impl Lowering<'_> {
                 continue;
             }
             let prefix = names::join(&path, property);
-            let source = said(card, "source", property).unwrap_or("no source given");
-            let from = match said(card, "confidence", property) {
+            let source = said(&card.table, "source", property).unwrap_or("no source given");
+            let from = match said(&card.table, "confidence", property) {
                 Some(confidence) => format!("{source}; confidence {confidence}"),
                 None => source.to_owned(),
             };
@@ -210,7 +212,7 @@ impl Lowering<'_> {
                     .strip_prefix(prefix.as_str())
                     .is_some_and(|rest| rest.is_empty() || rest.starts_with('.'))
             };
-            self.inputs.extend(inputs.iter().filter(rest).map(|input| Input {
+            self.inputs.extend(card.inputs.iter().filter(rest).map(|input| Input {
                 from: from.clone(),
                 ..input.clone()
             }));
@@ -247,19 +249,9 @@ impl Lowering<'_> {
         self.property(node, Ratio::new::<ratio::ratio>)
     }
 
-    fn property<D: uom::si::Dimension + ?Sized>(
-        &mut self,
-        node: &Node,
-        quantity: impl Fn(f64) -> uom::si::Quantity<D, uom::si::SI<f64>, f64>,
-    ) -> Option<Property> {
-        match &node.value {
-            Value::Number(number) => Some(Property::constant(quantity(*number))),
-            Value::Points(points) => {
-                let points: Vec<_> = points.iter().map(|(kelvin, value)| (temperature(*kelvin), quantity(*value))).collect();
-                self.accept(Property::new(&points), &node.spot)
-            }
-            _ => None,
-        }
+    fn property<D: Dimension + ?Sized>(&mut self, node: &Node, quantity: impl Fn(f64) -> Quantity<D, SI<f64>, f64>) -> Option<Property> {
+        let table = property(node, quantity)?;
+        self.accept(table, &node.spot)
     }
 
     fn emissivity(&mut self, node: &Node) -> Option<Emissivity> {

@@ -25,6 +25,7 @@ mod wait;
 
 use super::checked::{CaseFile, Input, InputValue};
 use super::findings::Findings;
+use super::keys::VERSION;
 use super::suggest;
 use super::tree::{Node, Spot, Table, Value};
 use crate::diagnostics::Diagnostic;
@@ -32,6 +33,9 @@ use crate::model::{Allowance, Model, ModelError, ModelParts};
 use crate::units::Kind;
 use material::Materials;
 use std::path::Path;
+
+pub(super) use limit::kind_of;
+pub(super) use material::{NEEDED, PROPERTIES, property, said};
 
 /// What lowering reads and what it adds to.
 pub(super) struct Lowering<'a> {
@@ -64,7 +68,7 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
     let allowance = lowering.allowance(case);
     let tolerance = lowering.tolerance(case);
     materials.finish(&mut lowering);
-    lowering.later(root, &stations);
+    lowering.later(root, &stations, profile.as_ref());
     let parts = ModelParts {
         title,
         surroundings: weather.surroundings?,
@@ -188,12 +192,12 @@ impl Lowering<'_> {
     fn version(&mut self, case: &Table) {
         let Some(node) = case.node("soakdown") else { return };
         #[expect(clippy::float_cmp, reason = "whole numbers")]
-        if node.number().is_some_and(|version| version != 1.0) {
+        if node.number().is_some_and(|version| version != f64::from(VERSION)) {
             self.error(
                 &node.spot,
                 "format-version",
                 "this version of the case file is unknown",
-                "this program reads version 1",
+                format!("this program reads version {VERSION}"),
             );
         }
     }

@@ -2,7 +2,8 @@
 
 use super::quantities::time;
 use super::{Lowering, Node, Table};
-use crate::case::keys::is_phase_key;
+use crate::case::keys::{Expect, is_phase_key};
+use crate::case::ready::{self, Filled, Wanted};
 use crate::diagnostics::Diagnostic;
 use crate::model::{Phase, PhaseKind, Profile};
 
@@ -10,8 +11,10 @@ use crate::model::{Phase, PhaseKind, Profile};
 const MOST_PHASES: u64 = 100_000;
 
 /// The profile, and what the rest of the case must know of it.
-pub(super) struct LoweredProfile {
+pub(in crate::case) struct LoweredProfile {
     pub profile: Profile,
+    /// What is expected of each value of a ready profile.
+    pub values: Vec<(String, &'static Expect)>,
     /// Length of the longest burn, s.
     pub longest_burn: f64,
     /// Whether a burn has a level, ramp or tail of its own.
@@ -34,14 +37,32 @@ impl Lowering<'_> {
             return None;
         }
         if let Some(ready) = table.node("use") {
-            self.not_built_yet(&ready.spot, "a ready profile");
-            return None;
+            let filled = self.ready(ready, table.node("values"))?;
+            return self.written_out(&filled.phases, filled.expects);
         }
         self.misfits(table, &["values"], "without \"use\"");
         let Some(list) = table.node("phases") else {
-            self.missing(&node.spot, "phases", "in [profile]: what happens when");
+            self.missing(
+                &node.spot,
+                "phases",
+                "in [profile]: what happens when; or \"use\", with the name of a ready profile",
+            );
             return None;
         };
+        self.written_out(list, Vec::new())
+    }
+
+    fn ready(&mut self, name: &Node, values: Option<&Node>) -> Option<Filled> {
+        let wanted = Wanted {
+            text: name.text()?,
+            spot: Some(name.words()),
+            folder: self.folder,
+        };
+        let ready = ready::read(&wanted, self.findings, self.files)?;
+        ready::fill(&ready, values, self.findings, self.inputs)
+    }
+
+    pub(in crate::case) fn written_out(&mut self, list: &Node, values: Vec<(String, &'static Expect)>) -> Option<LoweredProfile> {
         let phases = self.phases(list.list()?, true)?;
         let burns = || phases.iter().filter(|phase| phase.kind() == PhaseKind::Burn);
         let longest_burn = burns().map(Phase::duration).fold(0.0, f64::max);
@@ -53,6 +74,7 @@ impl Lowering<'_> {
             longest_burn,
             shaped: any(list, &|phase| ["level", "ramp", "tail"].into_iter().any(|key| phase.has(key))),
             purged: any(list, &|phase| phase.switch("purge") == Some(true)),
+            values,
             coolant_off: any(list, &|phase| phase.switch("coolant") == Some(false)),
             profile: Profile::new(phases),
         })
