@@ -4,3 +4,4 @@ mod door;
 mod materials;
 mod run_and_check;
 mod schema;
+mod shapes;

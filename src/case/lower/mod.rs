@@ -3,6 +3,7 @@
 
 mod convection;
 mod coolant;
+mod csv_file;
 mod faces;
 mod follow;
 mod heating;
@@ -16,6 +17,7 @@ mod outside;
 mod probe;
 mod profile;
 pub(super) mod quantities;
+mod start;
 mod station;
 mod surroundings;
 mod view;
@@ -54,9 +56,12 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<(Model, O
     let title = lowering.title(case);
     let weather = lowering.weather(case);
     let start = lowering.start(case, weather.air);
-    let mut materials = Materials::new(case, start.unwrap_or(quantities::ROOM));
+    let mut materials = Materials::new(case, start.temperature.unwrap_or(quantities::ROOM));
     let profile = lowering.profile(case);
-    let stations = lowering.stations(case, &weather, profile.as_ref(), &mut materials);
+    let mut stations = lowering.stations(case, &weather, profile.as_ref(), &mut materials);
+    if let Some(earlier) = &start.earlier {
+        lowering.start_from(case, earlier, &mut stations);
+    }
     lowering.wind(case);
     lowering.followed_stations(case);
     let waits = lowering.waits(case, &stations);
@@ -67,7 +72,7 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<(Model, O
     let parts = ModelParts {
         title,
         surroundings: weather.surroundings?,
-        start: quantities::temperature(start?),
+        start: quantities::temperature(start.temperature?),
         profile: profile?.profile,
         stations: stations.into_iter().map(|station| station.model).collect::<Option<_>>()?,
         waits: waits?,
