@@ -138,6 +138,8 @@ pub struct Wall {
     pub ambient: f64,
     /// Radiating surfaces, where they are not as warm as the air.
     pub surfaces: Option<f64>,
+    /// All that is around it, where it is more than the temperatures above.
+    pub around: Option<Surroundings>,
     pub phases: Vec<Phase>,
     /// Depths of probes.
     pub probes: Vec<f64>,
@@ -159,6 +161,7 @@ impl Wall {
             start: 300.0,
             ambient: 300.0,
             surfaces: None,
+            around: None,
             phases: Vec::new(),
             probes: Vec::new(),
             waits: Vec::new(),
@@ -209,12 +212,15 @@ impl Wall {
         let waits = waits.collect::<Result<Vec<_>, _>>()?;
         Ok(ModelParts {
             title: "check".into(),
-            surroundings: Surroundings::new(
-                temperature(self.ambient),
-                temperature(self.surfaces.unwrap_or(self.ambient)),
-                Pressure::new::<pascal>(101_325.0),
-                flux(0.0),
-            )?,
+            surroundings: match self.around {
+                Some(around) => around,
+                None => Surroundings::new(
+                    temperature(self.ambient),
+                    temperature(self.surfaces.unwrap_or(self.ambient)),
+                    Pressure::new::<pascal>(101_325.0),
+                    flux(0.0),
+                )?,
+            },
             start: temperature(self.start),
             profile: Profile::new(self.phases),
             stations: vec![station],

@@ -64,11 +64,12 @@ pub struct PhaseCheck {
 /// # Errors
 /// When the trial run that makes the grid fails.
 pub fn check(model: &Model, wall: Option<Kelvin>) -> Result<CheckAnswers, RunError> {
-    let wall = wall.unwrap_or(model.start);
     let mut stations = Vec::new();
     let walls = resolve_all(model, |_| PassSettings::default())?;
     for (index, station) in model.stations.iter().enumerate() {
         let resolved = &walls[index].resolved;
+        let own_start = station.start.as_ref().and_then(|start| start.hot_face());
+        let wall = wall.or(own_start).unwrap_or(model.start);
         let heating = station.heating.as_ref().map(|heating| {
             let (coefficient, gas_temperature, flux) = match &heating.model {
                 HeatingModel::Film {

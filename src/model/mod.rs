@@ -10,7 +10,9 @@ mod layer;
 mod material;
 mod profile;
 mod question;
+mod readings;
 mod si;
+mod start;
 mod station;
 mod table;
 
@@ -24,7 +26,9 @@ pub use layer::{CrossSection, Gap, GapGas, Joint, Layer, Limit, LimitKind, Limit
 pub use material::{Material, MaterialValues};
 pub use profile::{Phase, PhaseKind, Profile};
 pub use question::{Allowance, Place, Wait};
+pub use readings::Readings;
 pub use si::*;
+pub use start::StartProfile;
 pub use station::{Probe, Shape, Station, StationValues};
 pub use table::{Table, TablePoint};
 
@@ -35,7 +39,7 @@ pub struct Model {
     pub(crate) title: String,
     /// Air, surfaces, pressure, wind and sun around every station.
     pub(crate) surroundings: Surroundings,
-    /// Uniform temperature of every wall at time 0.
+    /// Uniform temperature of every wall at time 0, of those that do not start from a profile of their own.
     pub(crate) start: Kelvin,
     /// What the engine does, phase by phase.
     pub(crate) profile: Profile,
@@ -56,7 +60,7 @@ pub struct ModelParts {
     pub title: String,
     /// Air, surfaces, pressure, wind and sun.
     pub surroundings: Surroundings,
-    /// Uniform temperature of every wall at time 0.
+    /// Uniform temperature of every wall at time 0, of those that do not start from a profile of their own.
     pub start: uom::si::f64::ThermodynamicTemperature,
     /// What the engine does.
     pub profile: Profile,

@@ -1,6 +1,6 @@
 //! One wall section.
 
-use super::{CrossSection, Heating, Idle, Layer, Losses, Metres, ModelError, OuterFace, Place, Resistance, Seconds};
+use super::{CrossSection, Heating, Idle, Layer, Losses, Metres, ModelError, OuterFace, Place, Resistance, Seconds, StartProfile};
 use uom::si::f64::{Length, Time};
 
 /// How heat spreads through the wall.
@@ -54,6 +54,8 @@ pub struct Station {
     pub(crate) probes: Vec<Probe>,
     /// What takes heat from the sides of a bar, layer by layer; empty: nothing does.
     pub(crate) sides: Vec<Losses>,
+    /// Where it starts; `None`: at the model's start temperature.
+    pub(crate) start: Option<StartProfile>,
 }
 
 /// The parts of a [`Station`], for [`Station::new`].
@@ -114,6 +116,7 @@ impl Station {
             outer,
             probes: Vec::new(),
             sides: Vec::new(),
+            start: None,
         })
     }
 
@@ -130,6 +133,13 @@ impl Station {
         }
         self.sides = sides;
         Ok(self)
+    }
+
+    /// The same station starting from a profile of its own, such as an earlier run left. Its layers are those of the station: a caller's promise.
+    #[must_use]
+    pub fn with_start(mut self, start: StartProfile) -> Self {
+        self.start = Some(start);
+        self
     }
 
     /// Area at a distance from the hot face, m, in a layer, over the area of the hot face (of a bar: its section at the heated end).

@@ -1,7 +1,7 @@
 //! Drives one wall through its segments.
 
 use super::Segment;
-use crate::model::{Kelvin, ModelError, PhaseKind, Seconds, Station, Surroundings, WattsPerSquareMetre};
+use crate::model::{Kelvin, ModelError, Outside, PhaseKind, Seconds, Station, Surroundings, WattsPerSquareMetre};
 use crate::solve::{Flow, Integrator, Settings, Slot, SolveError, Step};
 use crate::wall::{Grid, NodeMap, Wall};
 use std::sync::atomic::{AtomicBool, Ordering};
@@ -46,17 +46,25 @@ pub struct Course {
 }
 
 impl Course {
-    /// A wall at a uniform temperature at clock 0, to be integrated with this tolerance of one step, K.
+    /// A wall at clock 0, at a uniform temperature or where its own start profile has it, to be integrated with this tolerance of one step, K.
     pub fn new(station: &Station, surroundings: &Surroundings, grid: &Grid, start: Kelvin, step_tolerance: f64) -> Self {
         let wall = Wall::new([(station, surroundings)], grid);
         let integrator = Integrator::new(wall.unknowns_at([start]), wall.followers_at([start]));
-        Self {
+        let mut course = Self {
             station: station.name.clone(),
             wall,
             integrator,
             settings: Settings::with_tolerance(step_tolerance),
             clock: 0.0,
+        };
+        if station.start.is_some() {
+            let mut temperatures = course.wall.map(0).start_temperatures(station, start);
+            if let (Outside::Fixed(held), Some(last)) = (&station.outer.outside, temperatures.last_mut()) {
+                *last = *held;
+            }
+            course.place(0.0, &temperatures);
         }
+        course
     }
 
     /// The clock reached.

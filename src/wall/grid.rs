@@ -126,7 +126,11 @@ fn outer_jump(model: &Model, station: &Station, through_the_wall: WattsPerSquare
             Jump::Temperature
         };
     };
-    let at_start = outside_losses(losses, &model.surroundings, None, model.start).0.abs();
+    let face = station
+        .start
+        .as_ref()
+        .and_then(|start| start.layers().last()?.last().map(|point| point.1));
+    let at_start = outside_losses(losses, &model.surroundings, None, face.unwrap_or(model.start)).0.abs();
     let coolant = losses.coolant.as_ref().map_or(0.0, |coolant| {
         through_the_wall + coolant.coefficient * (model.start - coolant.temperature).abs()
     });

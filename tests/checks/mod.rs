@@ -18,3 +18,4 @@ mod slab;
 mod steady;
 mod trade;
 mod traps;
+mod wind;

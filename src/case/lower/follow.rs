@@ -22,9 +22,8 @@ impl Lowering<'_> {
         let face = if face == "outer-face" { FollowedFace::Outer } else { FollowedFace::Hot };
         let followed = Followed::new(station, face, transfer(table.number("conductance")?));
         let text = format!(
-            "{}: its hot end follows the {} of {station} at all times, burn and after, one way: what it draws is not taken from that wall; level, ramp, tail and \
+            "its hot end follows the {} of {station} at all times, burn and after, one way: what it draws is not taken from that wall; level, ramp, tail and \
              purge act on that wall only",
-            section.name,
             face.word()
         );
         self.findings.notice("follows-one-way", text, Some(section.name), None);

@@ -3,6 +3,7 @@
 
 mod convection;
 mod coolant;
+mod csv_file;
 mod faces;
 mod follow;
 mod heating;
@@ -15,13 +16,14 @@ mod material;
 mod outside;
 mod probe;
 mod profile;
-mod quantities;
+pub(super) mod quantities;
+mod start;
 mod station;
 mod surroundings;
 mod view;
 mod wait;
 
-use super::checked::{CaseFile, Input, InputValue};
+use super::checked::{CaseFile, Input, InputValue, LogFormat};
 use super::findings::Findings;
 use super::keys::VERSION;
 use super::suggest;
@@ -48,26 +50,29 @@ pub(super) struct Lowering<'a> {
 const TOLERANCE: f64 = 0.05;
 
 /// Builds the model; `None` when something was found that forbids it.
-pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
+pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<(Model, Option<LogFormat>)> {
     let case = root.table()?;
     lowering.version(case);
     let title = lowering.title(case);
     let weather = lowering.weather(case);
     let start = lowering.start(case, weather.air);
-    let mut materials = Materials::new(case, start.unwrap_or(quantities::ROOM));
+    let mut materials = Materials::new(case, start.temperature.unwrap_or(quantities::ROOM));
     let profile = lowering.profile(case);
-    let stations = lowering.stations(case, &weather, profile.as_ref(), &mut materials);
+    let mut stations = lowering.stations(case, &weather, profile.as_ref(), &mut materials);
+    if let Some(earlier) = &start.earlier {
+        lowering.start_from(case, earlier, &mut stations);
+    }
     lowering.wind(case);
     lowering.followed_stations(case);
     let waits = lowering.waits(case, &stations);
     let allowance = lowering.allowance(case);
     let tolerance = lowering.tolerance(case);
     materials.finish(&mut lowering);
-    lowering.later(root, &stations, profile.as_ref());
+    let log_format = lowering.later(root, &stations, profile.as_ref());
     let parts = ModelParts {
         title,
         surroundings: weather.surroundings?,
-        start: quantities::temperature(start?),
+        start: quantities::temperature(start.temperature?),
         profile: profile?.profile,
         stations: stations.into_iter().map(|station| station.model).collect::<Option<_>>()?,
         waits: waits?,
@@ -77,7 +82,8 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
     if lowering.findings.diagnostics.has_errors() {
         return None;
     }
-    lowering.accept(Model::new(parts), &root.spot)
+    let model = lowering.accept(Model::new(parts), &root.spot)?;
+    Some((model, log_format))
 }
 
 impl Lowering<'_> {
