@@ -142,7 +142,7 @@ fn every_shipped_case_is_accepted() -> Outcome {
     assert!(examples.len() >= 4 && starters.len() >= 4);
     for file in examples.iter().chain(&starters) {
         validator
-            .check(&document(&file)?)
+            .check(&document(file)?)
             .map_err(|error| format!("{}: {error}", file.display()))?;
     }
     Ok(())
