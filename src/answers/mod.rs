@@ -3,6 +3,7 @@
 mod accuracy;
 mod check;
 mod follow;
+mod log;
 mod pass;
 mod run;
 mod steady;

@@ -31,6 +31,8 @@ pub(super) struct Keep {
     pub times: Vec<Seconds>,
     pub both_sides: bool,
     pub profile_times: Vec<Seconds>,
+    /// Times at which probes are read, beside the rows of the history.
+    pub reading_times: Vec<Seconds>,
 }
 
 /// What a level is watched for.
@@ -188,6 +190,8 @@ pub struct Pass {
     pub(super) watcher: Watcher,
     pub(super) map: NodeMap,
     pub(super) rows: Vec<Row>,
+    /// At the reading times.
+    pub(super) readings: Vec<Row>,
     pub(super) profiles: Vec<(Seconds, Vec<(Metres, Kelvin)>)>,
     /// Net heat in and out, and what the wall holds more than at the start, J per m² of hot face.
     pub(super) heat: [f64; 3],
@@ -257,12 +261,14 @@ impl Pass {
         let levels = plan.levels.iter().map(|level| level.0).collect();
         let mut watcher = Watcher::new(plan.quantities.clone(), levels, origin, last_phase);
         let mut recorder = Recorder::new(keep.times.clone(), keep.both_sides, keep.profile_times.clone());
+        let mut reader = Recorder::new(keep.reading_times.clone(), false, Vec::new());
         let mut step_ends = Vec::new();
         course.drive(&segments, settings.stop, |moment| {
             if keep.both_sides {
                 step_ends.push((moment.to, rows_for_a_curve(moment)));
             }
             recorder.see(moment);
+            reader.see(moment);
             also(moment);
             if let Some(progress) = settings.progress {
                 progress(moment.to);
@@ -275,6 +281,7 @@ impl Pass {
             watcher,
             map: course.wall.map(0).clone(),
             rows: recorder.rows,
+            readings: reader.rows,
             profiles: recorder.profiles,
             heat: [inward, outward, course.wall.stored(0, &start, course.unknowns())],
             capacity: course.wall.capacity(0),

@@ -2,10 +2,11 @@
 
 use super::accuracy::{Resolved, last_burn_start};
 use super::follow::{ResolvedWall, informed, resolve_all};
+use super::log::{self, reading_times};
 use super::pass::{Keep, LevelOf, Pass, PassSettings, kept, limits};
 use super::steady::{Burn, steady};
 use super::types::*;
-use crate::model::{HeatingModel, Kelvin, Limit, Model, PhaseKind, Place, Seconds, Shape, Station};
+use crate::model::{HeatingModel, Kelvin, Limit, Model, PhaseKind, Place, Readings, Seconds, Shape, Station};
 use crate::run::{Peak, Quantity, Rest, Row, RunError, SAME};
 use std::sync::atomic::AtomicBool;
 
@@ -16,6 +17,8 @@ pub struct RunOptions<'a> {
     pub history: bool,
     /// Exactly these rows in the trace; empty: the program's own, dense enough to draw.
     pub times: Vec<Seconds>,
+    /// Readings of a test to put beside the run; empty: none.
+    pub log: &'a [Readings],
     /// Set from outside to stop.
     pub stop: Option<&'a AtomicBool>,
     /// Told the share of the work done, as far as it is known.
@@ -29,6 +32,8 @@ pub struct RunOutcome {
     pub answers: RunAnswers,
     /// The histories.
     pub histories: Vec<StationHistory>,
+    /// Every reading of a log beside the computed one: station by index, probe's name, and the readings in rising time.
+    pub compared: Vec<(usize, String, Vec<ComparedReading>)>,
 }
 
 /// Points that get this much hotter after the last burn have a soak-back peak.
@@ -41,7 +46,8 @@ const SOAKS: f64 = 1.0;
 pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunError> {
     let written_end = model.profile.starts().last().copied().unwrap_or(0.0);
     let count = model.stations.len();
-    let asked = options.times.iter().copied().fold(0.0, f64::max);
+    let logged = options.log.iter().filter_map(|readings| readings.points.last()).map(|point| point.0);
+    let asked = options.times.iter().copied().chain(logged).fold(0.0, f64::max);
     let progress: Vec<_> = (0..count)
         .map(|place| {
             let share = move |clock: Seconds| (place as f64 + (clock / written_end.max(1.0)).min(1.0)) / (2 * count) as f64;
@@ -62,6 +68,7 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
     let times = if options.times.is_empty() { step_ends } else { sorted(&options.times) };
     let mut stations = Vec::with_capacity(count);
     let mut histories = Vec::new();
+    let mut compared = Vec::new();
     let mut findings = Vec::new();
     let mut inside = true;
     for (index, wall) in walls.iter().enumerate() {
@@ -75,11 +82,12 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
             ..PassSettings::default()
         };
         // What the grid was made with serves, where nothing more is asked and this station decides how long the run goes on.
-        let again = options.history || resolved.pass.watcher.computed_until() < until;
+        let again = options.history || !options.log.is_empty() || resolved.pass.watcher.computed_until() < until;
         let mut longer = None;
         if again {
             let mut keep = Keep {
                 profile_times: last_burn_start.into_iter().collect(),
+                reading_times: reading_times(options.log, index),
                 ..Keep::default()
             };
             if options.history {
@@ -113,7 +121,17 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
         };
         inside &= !model.allowance.given || keeps_allowance(model, index, &walls, options)?;
         findings.extend(found(model, station, pass, resolved));
-        stations.push(answers(model, index, pass, resolved, state));
+        let mut answered = answers(model, index, pass, resolved, state);
+        if !options.log.is_empty() {
+            let (rows, points): (Vec<_>, Vec<_>) = log::compared(options.log, index, station, &pass.readings).into_iter().unzip();
+            compared.extend(
+                rows.iter()
+                    .zip(points)
+                    .map(|(row, points): (&LogAnswer, _)| (index, row.probe.clone(), points)),
+            );
+            answered.log = Some(rows);
+        }
+        stations.push(answered);
         if let Some(pass) = longer.filter(|_| options.history) {
             histories.push(history(pass));
         }
@@ -130,7 +148,11 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
         stations,
         findings,
     };
-    Ok(RunOutcome { answers, histories })
+    Ok(RunOutcome {
+        answers,
+        histories,
+        compared,
+    })
 }
 
 /// Whether every limit of a station is kept with the allowance taken off it and put on the heating.
@@ -232,6 +254,7 @@ fn answers(model: &Model, index: usize, pass: &Pass, resolved: &Resolved, state:
         outer_face: at(Place::OuterFace, station.outer.limit.as_ref()),
         probes: probes.collect(),
         soak_back: soak_back(pass),
+        log: None,
         evened_out: evened_out(resolved),
         steady: state,
         waits: waits(model, index, resolved),

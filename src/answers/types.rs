@@ -70,6 +70,8 @@ pub struct StationAnswers {
     pub probes: Vec<ProbeAnswer>,
     /// What happened after the last burn.
     pub soak_back: SoakBack,
+    /// Differences from a test's log, one for each of its columns at this station; `None` without a log.
+    pub log: Option<Vec<LogAnswer>>,
     /// From when on hottest − coolest stays below 1 K.
     pub evened_out: EvenedOut,
     /// If the last burn went on for ever.
@@ -153,6 +155,41 @@ pub struct ProbeAnswer {
     pub peak_time: Seconds,
     /// The highest temperature of the wall there.
     pub peak_true: Kelvin,
+}
+
+/// How far the readings of a test are from the computed ones, for one probe.
+#[derive(Clone, Debug, PartialEq)]
+pub struct LogAnswer {
+    /// The probe's name.
+    pub probe: String,
+    /// Standard deviation of a reading, as the case says.
+    pub noise: KelvinDifference,
+    /// How many readings were compared.
+    pub count: usize,
+    /// Where the two differ most; `None` if nothing was compared.
+    pub largest: Option<ComparedReading>,
+    /// The last reading.
+    pub end: Option<ComparedReading>,
+    /// Root of the mean of the squared differences.
+    pub root_mean_square: Option<KelvinDifference>,
+}
+
+/// A reading of a test beside the computed one.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct ComparedReading {
+    /// The clock.
+    pub time: Seconds,
+    /// What the test's probe read.
+    pub reading: Kelvin,
+    /// What the run's probe reads then, its lag included.
+    pub computed: Kelvin,
+}
+
+impl ComparedReading {
+    /// Computed − read: above zero, the run is the hotter one.
+    pub fn difference(&self) -> KelvinDifference {
+        self.computed - self.reading
+    }
 }
 
 /// Stored heat on its way outwards after the last burn.

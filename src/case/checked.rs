@@ -1,7 +1,7 @@
 //! A case that was read and accepted.
 
 use crate::diagnostics::{Diagnostics, Notice};
-use crate::model::Model;
+use crate::model::{KelvinDifference, Model, Seconds};
 
 /// A case that was read and accepted: the model, and where each of its numbers comes from.
 #[derive(Clone, Debug)]
@@ -14,6 +14,8 @@ pub struct Case {
     pub files: Vec<CaseFile>,
     /// What will be run.
     pub model: Model,
+    /// How a test's log is read, if [fit] says so.
+    pub log_format: Option<LogFormat>,
     /// Every input with where it comes from: the case's own, defaults taken, and library values used.
     pub inputs: Vec<Input>,
     /// What to tell with every answer: odd values, assumptions that may decide the answer, sections that no command uses yet.
@@ -29,6 +31,32 @@ pub struct CaseFile {
     pub path: String,
     /// `sha256:` and the hexadecimal digest of its bytes.
     pub digest: String,
+}
+
+/// How a test's log is read.
+#[derive(Clone, Debug, PartialEq)]
+pub struct LogFormat {
+    /// The time column's name; its values are seconds.
+    pub time: String,
+    /// The log's time at the start of the profile.
+    pub offset: Seconds,
+    /// Which column is which probe.
+    pub columns: Vec<LogColumn>,
+}
+
+/// A column of a log.
+#[derive(Clone, Debug, PartialEq)]
+pub struct LogColumn {
+    /// The station, by index.
+    pub station: usize,
+    /// Its probe, by index.
+    pub probe: usize,
+    /// The column's name.
+    pub column: String,
+    /// `degC`, `K`, `degF` or `degR`.
+    pub unit: String,
+    /// Standard deviation of a reading.
+    pub noise: KelvinDifference,
 }
 
 /// One input and where it comes from.

@@ -72,7 +72,7 @@ pub fn load(path: &Path, settings: &[String]) -> Result<Case, Diagnostics> {
         files: &mut files,
     };
     let model = lower::lower(&root, lowering);
-    let Some(model) = model.filter(|_| !findings.diagnostics.has_errors()) else {
+    let Some((model, log_format)) = model.filter(|_| !findings.diagnostics.has_errors()) else {
         if !findings.diagnostics.has_errors() {
             let message = "the case can't be built, and no reason was found: this is a fault of the program";
             findings.nowhere(Diagnostic::error("not-accepted", message));
@@ -86,6 +86,7 @@ pub fn load(path: &Path, settings: &[String]) -> Result<Case, Diagnostics> {
         digest,
         files,
         model,
+        log_format,
         inputs,
         notices: findings.notices,
         doubts: findings.diagnostics,

@@ -3,6 +3,7 @@
 //! text → tree (every value with its place) → settings put on it → form check (names, kinds, sizes; values in SI) → lowering (references and rules).
 
 mod checked;
+mod csv_table;
 mod digest;
 mod findings;
 mod form;
@@ -18,14 +19,16 @@ mod schema;
 mod settings;
 mod shipped;
 mod suggest;
+mod test_log;
 mod touch;
 mod tree;
 
 #[cfg(test)]
 mod tests;
 
-pub use checked::{Case, CaseFile, Input, InputValue};
+pub use checked::{Case, CaseFile, Input, InputValue, LogColumn, LogFormat};
 pub use load::load;
 pub use material_card::{Confidence, MaterialCard, Said, material_card, material_cards};
 pub use schema::{Schema, schema};
 pub use shipped::{ReadyProfile, ReadyValue, STARTERS, Starter, ready_profile, ready_profiles};
+pub use test_log::read_log;

@@ -12,13 +12,14 @@ use super::progress::Progress;
 use super::start::units;
 use soakdown::answers::{RunOptions, RunOutcome, Verdict};
 use soakdown::case::Case;
-use soakdown::report::{ResultDocument, depths_csv, json, run_page, trace_csv};
+use soakdown::model::Readings;
+use soakdown::report::{ResultDocument, depths_csv, json, log_csv, run_page, trace_csv};
 use soakdown::{answers, case};
 
 /// Reads the case, runs it, shows and writes the answers.
 pub fn run(arguments: &RunArguments, printer: Printer) -> Result<ExitStatus, Failure> {
     let common = &arguments.common;
-    let case = case::load(&arguments.case, &common.set).map_err(Failure::Refused)?;
+    let mut case = case::load(&arguments.case, &common.set).map_err(Failure::Refused)?;
     if !case.doubts.list.is_empty() {
         printer.note(&rendered(&case.doubts));
     }
@@ -27,7 +28,11 @@ pub fn run(arguments: &RunArguments, printer: Printer) -> Result<ExitStatus, Fai
             "--times is for trace.csv and depths.csv, which are written only with --out DIR",
         ));
     }
-    let outcome = computed(arguments, &case)?;
+    let log = match &arguments.log {
+        Some(path) => case::read_log(&mut case, path).map_err(Failure::Refused)?,
+        None => Vec::new(),
+    };
+    let outcome = computed(arguments, &case, &log)?;
     let command = run_line(arguments);
     let document = ResultDocument::new(&case, &command, &outcome.answers);
     if common.json {
@@ -38,24 +43,28 @@ pub fn run(arguments: &RunArguments, printer: Printer) -> Result<ExitStatus, Fai
     if let Some(folder) = &common.out {
         let stations = case.model.stations();
         let file = |name, bytes| OutputFile { name, bytes };
-        let files = [
+        let mut files = vec![
             file("result.json", json(&document)?.into_bytes()),
             file("trace.csv", trace_csv(stations, &outcome.histories)?),
             file("depths.csv", depths_csv(stations, &outcome.histories)?),
         ];
+        if arguments.log.is_some() {
+            files.push(file("log.csv", log_csv(stations, &outcome.compared)?));
+        }
         write_files(folder, &files)?;
     }
     let amiss = common.strict && outcome.answers.verdict != Verdict::WithinLimits;
     Ok(if amiss { ExitStatus::Amiss } else { ExitStatus::Computed })
 }
 
-fn computed(arguments: &RunArguments, case: &Case) -> Result<RunOutcome, Failure> {
+fn computed(arguments: &RunArguments, case: &Case, log: &[Readings]) -> Result<RunOutcome, Failure> {
     let stop = stop_flag()?;
     let progress = Progress::start(!arguments.common.quiet);
     let tell = |share| progress.tell(share);
     let options = RunOptions {
         history: arguments.common.out.is_some(),
         times: arguments.times.iter().map(|time| time.value).collect(),
+        log,
         stop: Some(&stop),
         progress: Some(&tell),
     };

@@ -10,6 +10,7 @@ mod layer;
 mod material;
 mod profile;
 mod question;
+mod readings;
 mod si;
 mod start;
 mod station;
@@ -25,6 +26,7 @@ pub use layer::{CrossSection, Gap, GapGas, Joint, Layer, Limit, LimitKind, Limit
 pub use material::{Material, MaterialValues};
 pub use profile::{Phase, PhaseKind, Profile};
 pub use question::{Allowance, Place, Wait};
+pub use readings::Readings;
 pub use si::*;
 pub use start::StartProfile;
 pub use station::{Probe, Shape, Station, StationValues};

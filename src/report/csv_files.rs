@@ -1,7 +1,7 @@
 //! `trace.csv` and `depths.csv`: RFC 4180, SI, full precision.
 
 use super::error::ReportError;
-use crate::answers::StationHistory;
+use crate::answers::{ComparedReading, StationHistory};
 use crate::model::{Kelvin, Station};
 
 /// `trace.csv`: one row a time, the stations side by side.
@@ -88,6 +88,23 @@ pub fn depths_csv(stations: &[Station], histories: &[StationHistory]) -> Result<
             for &(depth, temperature) in &profile.points {
                 writer.write_record([station.name(), &profile.time.to_string(), &depth.to_string(), &temperature.to_string()])?;
             }
+        }
+    }
+    bytes(writer)
+}
+
+/// `log.csv`: every reading of a test beside the computed one; the difference is computed − read.
+///
+/// # Errors
+/// When the table can't be put together.
+pub fn log_csv(stations: &[Station], compared: &[(usize, String, Vec<ComparedReading>)]) -> Result<Vec<u8>, ReportError> {
+    let mut writer = writer();
+    writer.write_record(["station", "probe", "time_s", "reading_K", "computed_K", "difference_K"])?;
+    for (station, probe, points) in compared {
+        let station = stations.get(*station).map_or("", Station::name);
+        for point in points {
+            let numbers = [point.time, point.reading, point.computed, point.difference()].map(|number| number.to_string());
+            writer.write_record([station, probe].into_iter().chain(numbers.iter().map(String::as_str)))?;
         }
     }
     bytes(writer)

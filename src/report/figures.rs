@@ -54,6 +54,12 @@ impl Figures {
         self.difference(difference, Toward::Larger)
     }
 
+    /// A difference from a reading: its size never smaller than it is, with its sign.
+    pub(super) fn off(self, difference: KelvinDifference) -> String {
+        let size = self.difference(difference.abs(), Toward::Larger);
+        if difference < 0.0 { format!("-{size}") } else { format!("+{size}") }
+    }
+
     /// A temperature that was given, such as a limit: as it was written, to a hundredth, never higher.
     pub(super) fn given(self, temperature: Kelvin) -> String {
         let (value, unit) = self.scale(temperature);

@@ -28,7 +28,7 @@ mod starters_page;
 pub use cautions::{Caution, cautions_of_case, cautions_of_run};
 pub use check::CheckDocument;
 pub use check_page::check_page;
-pub use csv_files::{depths_csv, trace_csv};
+pub use csv_files::{depths_csv, log_csv, trace_csv};
 pub use error::ReportError;
 pub use figures::Units;
 pub use findings::warnings_of_run;

@@ -5,7 +5,8 @@ use super::cautions::cautions_of_run;
 use super::figures::Units;
 use super::findings::warnings_of_run;
 use crate::answers::{
-    EvenedOut, JointAnswer, LayerAnswer, LimitAnswer, PlaceAnswer, ProbeAnswer, RunAnswers, StationAnswers, Steady, Verdict, WaitAnswer, WaitState,
+    EvenedOut, JointAnswer, LayerAnswer, LimitAnswer, LogAnswer, PlaceAnswer, ProbeAnswer, RunAnswers, StationAnswers, Steady, Verdict, WaitAnswer,
+    WaitState,
 };
 use crate::case::{Case, CaseFile};
 use crate::diagnostics::Notice;
@@ -167,7 +168,7 @@ struct StationRow<'a> {
     /// What the heat in the wall still does after the last burn.
     soak_back: SoakBackRow,
     /// With a log: how far the readings are off; else null.
-    log: Option<()>,
+    log: Option<Vec<LogRow<'a>>>,
     /// Clock from which the hottest and the coolest point stay within 1 K; null with never and beyond-100-h.
     evened_out_s: Option<f64>,
     /// Whether the wall evens out.
@@ -205,7 +206,10 @@ impl<'a> StationRow<'a> {
                 last_peak_s: station.soak_back.last_peak.map(|(time, _)| time),
                 last_peak_depth_m: station.soak_back.last_peak.map(|(_, depth)| depth),
             },
-            log: None,
+            log: station
+                .log
+                .as_ref()
+                .map(|rows| rows.iter().map(|row| LogRow::new(&station.name, row)).collect()),
             evened_out_s,
             evened_out_state,
             steady: SteadyRow::new(&station.steady),
@@ -281,6 +285,35 @@ impl PlaceRow {
             time_over_limit_s: limit.map(|limit| limit.time_over),
             allowed_over_s: limit.map(|limit| limit.allowed_over),
             kept: limit.map(|limit| limit.kept),
+        }
+    }
+}
+
+/// Differences are computed − read.
+#[derive(Debug, Serialize, JsonSchema)]
+struct LogRow<'a> {
+    /// Name of the station.
+    station: &'a str,
+    /// Name of the probe.
+    probe: &'a str,
+    /// Computed − read where the two differ most; null where nothing was compared.
+    #[serde(rename = "largest_difference_K")]
+    largest_difference: Option<f64>,
+    /// When that is.
+    at_s: Option<f64>,
+    /// Computed − read at the last reading.
+    #[serde(rename = "end_difference_K")]
+    end_difference: Option<f64>,
+}
+
+impl<'a> LogRow<'a> {
+    fn new(station: &'a str, row: &'a LogAnswer) -> Self {
+        Self {
+            station,
+            probe: &row.probe,
+            largest_difference: row.largest.map(|point| point.difference()),
+            at_s: row.largest.map(|point| point.time),
+            end_difference: row.end.map(|point| point.difference()),
         }
     }
 }

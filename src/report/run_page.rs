@@ -17,6 +17,9 @@ const LISTED_WARNINGS: usize = 3;
 /// Cautions that the page has said by then: with the margin, and under the waits.
 const SAID_ABOVE: [&str; 2] = ["no-allowance", "measure-before-touch"];
 
+/// Warnings about a test's log, which stand with its table.
+const LOG_NOTICES: [&str; 3] = ["readings-before-start", "readings-after-end", "readings-missing"];
+
 /// The page, with its styles as escape codes.
 pub fn run_page(case: &Case, answers: &RunAnswers, units: Units) -> String {
     let mut page = Page::default();
@@ -26,6 +29,7 @@ pub fn run_page(case: &Case, answers: &RunAnswers, units: Units) -> String {
         page.gap();
         station_part(&mut page, answers, station, model, units);
     }
+    log_part(&mut page, case, answers, units);
     page.gap();
     waits_part(&mut page, answers, units);
     notices_part(&mut page, case, answers, units);
@@ -242,6 +246,63 @@ fn steady_text(answers: &RunAnswers, station: &StationAnswers, state: &SteadySta
     text
 }
 
+/// A test's readings beside the run.
+fn log_part(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units) {
+    let any = answers.stations.iter().any(|station| station.log.is_some());
+    if !any {
+        return;
+    }
+    page.gap();
+    let title = styled(BOLD, "log beside the run");
+    page.text(0, &format!("{title}  differences are run − log: above 0, the run is the hotter one"));
+    let mut table = Table::new(&[
+        Align::Left,
+        Align::Right,
+        Align::Left,
+        Align::Right,
+        Align::Left,
+        Align::Right,
+        Align::Right,
+        Align::Right,
+    ]);
+    table.row(
+        [
+            "probe",
+            "largest",
+            "when (clock)",
+            "at the end",
+            "end (clock)",
+            "rms",
+            "noise",
+            "readings",
+        ]
+        .map(|head| Cell::styled(BOLD, head)),
+    );
+    for station in &answers.stations {
+        let figures = Figures::new(units, station.numerical.estimated_error);
+        for row in station.log.iter().flatten() {
+            let (Some(largest), Some(end), Some(square)) = (row.largest, row.end, row.root_mean_square) else {
+                table.row([Cell::from(format!("{}/{}", station.name, row.probe)), Cell::from("none")]);
+                continue;
+            };
+            table.row([
+                Cell::from(format!("{}/{}", station.name, row.probe)),
+                Cell::from(figures.off(largest.difference())),
+                Cell::from(clock(largest.time)),
+                Cell::from(figures.off(end.difference())),
+                Cell::from(clock(end.time)),
+                Cell::from(figures.rise(square)),
+                Cell::from(figures.estimate(row.noise)),
+                Cell::from(row.count.to_string()),
+            ]);
+        }
+    }
+    page.table(2, &table);
+    for notice in case.notices.iter().filter(|notice| LOG_NOTICES.contains(&notice.code)) {
+        page.text(2, &warning_line(notice));
+    }
+}
+
 fn waits_part(page: &mut Page, answers: &RunAnswers, units: Units) {
     let several = answers.stations.len() > 1;
     let from = if answers.last_burn_end.is_some() {
@@ -297,7 +358,8 @@ fn wait_text(wait: &WaitAnswer, answers: &RunAnswers, figures: Figures) -> Strin
 
 fn notices_part(page: &mut Page, case: &Case, answers: &RunAnswers, units: Units) {
     let found = warnings_of_run(answers, units);
-    let warnings: Vec<&Notice> = found.iter().chain(&case.notices).collect();
+    let noticed = case.notices.iter().filter(|notice| !LOG_NOTICES.contains(&notice.code));
+    let warnings: Vec<&Notice> = found.iter().chain(noticed).collect();
     for notice in warnings.iter().take(LISTED_WARNINGS) {
         page.text(0, &warning_line(notice));
     }

@@ -154,6 +154,7 @@ pub(super) fn case() -> Case {
             digest: "sha256:01".into(),
         }],
         model: model.expect("a model"),
+        log_format: None,
         inputs: vec![
             input("surroundings.air", InputValue::Number(293.15), "K", "case"),
             input("surroundings.pressure", InputValue::Number(101_325.0), "Pa", "default"),
@@ -261,6 +262,7 @@ pub(super) fn answers() -> RunAnswers {
                 peak_true: 460.36,
             },
         ],
+        log: None,
         soak_back: SoakBack {
             outer_face_rise: 131.14,
             outer_face_peak: 41.37,

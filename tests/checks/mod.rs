@@ -10,6 +10,7 @@ mod estimate;
 mod fire;
 mod follow;
 mod lumped;
+mod materials;
 mod multilayer;
 mod nonlinear;
 mod semi_infinite;

@@ -2,9 +2,8 @@
 
 use super::{CaseFile, Lowering, Node, Spot};
 
-/// A file as read: the text's index among the sources, and each row with its place.
+/// A file as read, each row with its place.
 pub(super) struct CsvFile {
-    pub source: usize,
     pub header: Vec<String>,
     pub header_spot: Spot,
     pub rows: Vec<CsvRow>,
@@ -94,7 +93,6 @@ impl Lowering<'_> {
             }
         }
         Some(CsvFile {
-            source,
             header: header.fields,
             header_spot: header.spot,
             rows,

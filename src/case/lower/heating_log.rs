@@ -1,9 +1,9 @@
 //! Heating from a log: a CSV file beside the case.
 
-use super::csv_file::{CsvFile, CsvRow};
 use super::quantities::{flux, temperature, time, transfer};
 use super::station::Section;
-use super::{Lowering, Node, Table};
+use super::{CaseFile, Lowering, Node, Table};
+use crate::case::csv_table::{CsvRow, CsvTable};
 use crate::case::suggest;
 use crate::diagnostics::Diagnostic;
 use crate::model::{HeatingModel, LogRows};
@@ -20,34 +20,34 @@ impl Lowering<'_> {
             return None;
         };
         let net = table.switch("net").unwrap_or(false);
-        let log = self.read_csv(file)?;
-        let has = |name: &str| log.header.iter().any(|column| column == name);
-        for (index, column) in log.header.iter().enumerate() {
+        let log = self.read_log(file)?;
+        let has = |name: &str| log.column(name).is_some();
+        for (index, column) in log.header.fields.iter().enumerate() {
             if ![TIME, FLUX, COEFFICIENT, GAS].contains(&column.as_str()) {
                 let mut found = Diagnostic::warning("no-effect", format!("the column \"{column}\" is not used"));
                 found
                     .help
                     .extend(suggest::nearest(column, [TIME, FLUX, COEFFICIENT, GAS]).map(suggest::did_you_mean));
-                let spot = self.field_spot(&log.header_spot, index, column);
+                let spot = log.header.field_spot(index, self.findings);
                 self.findings.doubt(&spot, found);
             }
         }
         if has(FLUX) && (has(COEFFICIENT) || has(GAS)) {
             let message = format!("the log holds both \"{FLUX}\" and a coefficient or gas temperature");
-            self.error(&log.header_spot, "excluded", message, "one or the other");
+            self.error(&log.header.spot, "excluded", message, "one or the other");
             return None;
         }
         if has(FLUX) {
             let rows = self.columns(&log, [TIME, FLUX])?;
             let rows: Vec<_> = rows.into_iter().map(|[seconds, watts]| (time(seconds), flux(watts))).collect();
-            let rows = self.accept(LogRows::flux(&rows, net), &log.header_spot)?;
+            let rows = self.accept(LogRows::flux(&rows, net), &log.header.spot)?;
             self.tell_held(section, &rows, net);
             return Some(HeatingModel::Log(rows));
         }
         if !has(COEFFICIENT) && !has(GAS) {
             let message = format!("no column of the log holds the heating: \"{FLUX}\", or \"{COEFFICIENT}\" and \"{GAS}\"");
             self.error(
-                &log.header_spot,
+                &log.header.spot,
                 "missing-column",
                 message,
                 format!("due are {TIME} and {FLUX}, or {TIME}, {COEFFICIENT} and {GAS}"),
@@ -63,7 +63,7 @@ impl Lowering<'_> {
             .into_iter()
             .map(|[seconds, coefficient, gas]| (time(seconds), transfer(coefficient), temperature(gas)))
             .collect();
-        let rows = self.accept(LogRows::film(&rows), &log.header_spot)?;
+        let rows = self.accept(LogRows::film(&rows), &log.header.spot)?;
         self.tell_held(section, &rows, false);
         Some(HeatingModel::Log(rows))
     }
@@ -88,17 +88,60 @@ impl Lowering<'_> {
         }
     }
 
+    fn read_log(&mut self, file: &Node) -> Option<CsvTable> {
+        let written = file.text()?;
+        let path = self.folder.join(written);
+        let bytes = match std::fs::read(&path) {
+            Ok(bytes) => bytes,
+            Err(error) => {
+                let message = format!("can't read {}: {error}", path.display());
+                self.error(&file.words(), "cannot-read", message, "paths count from the folder of the case file");
+                return None;
+            }
+        };
+        let digest = crate::case::digest::of(&[&bytes]);
+        let Ok(text) = String::from_utf8(bytes) else {
+            self.error(
+                &file.words(),
+                "not-text",
+                format!("{} is no UTF-8 text", path.display()),
+                "a CSV file is due",
+            );
+            return None;
+        };
+        let used = CaseFile {
+            path: written.to_owned(),
+            digest,
+        };
+        if !self.files.contains(&used) {
+            self.files.push(used);
+        }
+        let source = self.findings.add_source(path.display().to_string(), text.clone());
+        self.parse_log(source, &text)
+    }
+
+    fn parse_log(&mut self, source: usize, text: &str) -> Option<CsvTable> {
+        let log = CsvTable::parse(source, text, TIME, self.findings)?;
+        for (index, column) in log.header.fields.iter().enumerate() {
+            if log.header.fields[..index].contains(column) {
+                self.error(&log.header.spot, "repeated-name", format!("the column \"{column}\" stands twice"), "");
+                return None;
+            }
+        }
+        Some(log)
+    }
+
     /// The numbers of some columns, row by row, the first one rising.
-    fn columns<const N: usize>(&mut self, log: &CsvFile, names: [&str; N]) -> Option<Vec<[f64; N]>> {
+    fn columns<const N: usize>(&mut self, log: &CsvTable, names: [&str; N]) -> Option<Vec<[f64; N]>> {
         let mut indices = [0; N];
         let mut sound = true;
         for (slot, name) in indices.iter_mut().zip(names) {
-            match log.header.iter().position(|column| column == name) {
+            match log.column(name) {
                 Some(index) => *slot = index,
                 None => {
                     let message = format!("the column \"{name}\" is missing");
                     let due = format!("due are {TIME} and {FLUX}, or {TIME}, {COEFFICIENT} and {GAS}");
-                    self.error(&log.header_spot, "missing-column", message, due);
+                    self.error(&log.header.spot, "missing-column", message, due);
                     sound = false;
                 }
             }
@@ -111,7 +154,7 @@ impl Lowering<'_> {
             match self.row(log, row, &indices, &names) {
                 Some(numbers) => {
                     if rows.last().is_some_and(|last| numbers[0] <= last[0]) {
-                        let spot = self.field_spot(&row.spot, indices[0], row.fields.get(indices[0]).map_or("", String::as_str));
+                        let spot = row.field_spot(indices[0], self.findings);
                         self.error(&spot, "not-rising", "the times of a log must rise", "not after the one before");
                         sound = false;
                     }
@@ -123,16 +166,14 @@ impl Lowering<'_> {
         sound.then_some(rows)
     }
 
-    fn row<const N: usize>(&mut self, log: &CsvFile, row: &CsvRow, indices: &[usize; N], names: &[&str; N]) -> Option<[f64; N]> {
-        if row.fields.len() != log.header.len() {
-            let message = format!("this row has {} values, and the log has {} columns", row.fields.len(), log.header.len());
-            self.error(&row.spot, "uneven-row", message, "");
+    fn row<const N: usize>(&mut self, log: &CsvTable, row: &CsvRow, indices: &[usize; N], names: &[&str; N]) -> Option<[f64; N]> {
+        if !log.is_even(row, self.findings) {
             return None;
         }
         let mut numbers = [0.0; N];
         for ((number, &index), &name) in numbers.iter_mut().zip(indices).zip(names) {
-            let field = row.fields.get(index).map_or("", String::as_str);
-            let spot = self.field_spot(&row.spot, index, field);
+            let field = row.field(index);
+            let spot = row.field_spot(index, self.findings);
             match field.parse::<f64>() {
                 Ok(value) if value.is_finite() => *number = value,
                 _ => {
@@ -155,7 +196,6 @@ impl Lowering<'_> {
                 return None;
             }
         }
-        debug_assert!(log.source == row.spot.source);
         Some(numbers)
     }
 }

@@ -3,6 +3,7 @@
 use super::profile::LoweredProfile;
 use super::station::LoweredStation;
 use super::{Input, InputValue, Lowering, Node, Table, Value};
+use crate::case::checked::{LogColumn, LogFormat};
 use crate::case::form::{Form, unit_mistake};
 use crate::case::keys::{Expect, NOT_NEGATIVE, POSITIVE};
 use crate::case::names;
@@ -10,6 +11,7 @@ use crate::case::paths::{self, PathError, Segment, Step, Target};
 use crate::case::settings::path_mistake;
 use crate::case::suggest;
 use crate::case::tree::Spot;
+use crate::diagnostics::Diagnostic;
 use crate::units::{self, Kind};
 
 /// What an input is measured in, where it is a number or a table of them.
@@ -54,8 +56,8 @@ impl Known<'_> {
 }
 
 impl Lowering<'_> {
-    pub(super) fn later(&mut self, root: &Node, stations: &[LoweredStation], profile: Option<&LoweredProfile>) {
-        let Some(case) = root.table() else { return };
+    pub(super) fn later(&mut self, root: &Node, stations: &[LoweredStation], profile: Option<&LoweredProfile>) -> Option<LogFormat> {
+        let case = root.table()?;
         let known = Known {
             root,
             values: profile.map(|profile| profile.values.as_slice()),
@@ -67,9 +69,10 @@ impl Lowering<'_> {
                 self.spread(known, table, &format!("spread.{index}"));
             }
         }
-        if let Some(fit) = case.table("fit") {
-            self.fit(known, fit, stations);
-        }
+        let log_format = case.table("fit").and_then(|fit| {
+            self.fit(known, fit);
+            self.log_format(fit, stations)
+        });
         let bartz = case.list("station").unwrap_or_default().iter().any(|station| {
             let heating = station.table().and_then(|station| station.table("heating"));
             heating.and_then(|heating| heating.text("model")) == Some("bartz")
@@ -80,7 +83,7 @@ impl Lowering<'_> {
             ("variant", "compare and plan, which are not built yet, use it; the case runs as written"),
             ("spread", "spread and redline, which are not built yet, use it; the case runs as written"),
             ("abort", "redline, which is not built yet, uses it"),
-            ("fit", "fit, which is not built yet, uses it"),
+            ("fit", "run uses it with --log, and fit, which is not built yet"),
         ];
         for (name, who) in used_by {
             if case.has(name) && !(name == "engine" && bartz) {
@@ -97,6 +100,7 @@ impl Lowering<'_> {
                 );
             }
         }
+        log_format
     }
 
     fn engine(&mut self, case: &Table) {
@@ -292,7 +296,7 @@ impl Lowering<'_> {
         });
     }
 
-    fn fit(&mut self, known: Known<'_>, fit: &Table, stations: &[LoweredStation]) {
+    fn fit(&mut self, known: Known<'_>, fit: &Table) {
         for (index, free) in fit.list("free").unwrap_or_default().iter().enumerate() {
             let Some(table) = free.table() else { continue };
             let Some(measure) = table.node("input").and_then(|input| self.measure(known, input)) else {
@@ -320,19 +324,55 @@ impl Lowering<'_> {
                 self.error(&node.words(), "out-of-range", "\"to\" must lie above \"from\"", "the range is empty");
             }
         }
-        for column in fit.list("columns").unwrap_or_default() {
-            let Some(probe) = column.table().and_then(|table| table.node("probe")) else {
-                continue;
-            };
-            let Some(name) = probe.text() else { continue };
-            let known: Vec<_> = stations
+    }
+
+    /// How a log is read; `None` when something is wrong with it.
+    fn log_format(&mut self, fit: &Table, stations: &[LoweredStation]) -> Option<LogFormat> {
+        let columns: Vec<_> = fit
+            .list("columns")?
+            .iter()
+            .filter_map(Node::table)
+            .map(|column| self.log_column(column, stations))
+            .collect();
+        for (index, column) in fit.list("columns")?.iter().enumerate() {
+            let name = column.table().and_then(|column| column.node("column"));
+            let earlier = columns
                 .iter()
-                .flat_map(|station| station.probes.iter().map(|probe| format!("{}/{probe}", station.name)))
-                .collect();
-            if !known.iter().any(|known| known == name) {
-                self.unknown(probe, "unknown-place", "the probe", known.iter().map(String::as_str));
+                .take(index)
+                .flatten()
+                .any(|other| name.and_then(Node::text) == Some(&other.column));
+            if let (true, Some(name)) = (earlier, name) {
+                let found = Diagnostic::warning("repeated-name", "this column of the log is named twice");
+                self.findings.doubt(&name.words(), found.label("is it meant for two probes?"));
             }
         }
+        Some(LogFormat {
+            time: fit.text("time")?.to_owned(),
+            offset: fit.node("offset").map_or(Some(0.0), Node::number)?,
+            columns: columns.into_iter().collect::<Option<_>>()?,
+        })
+    }
+
+    fn log_column(&mut self, column: &Table, stations: &[LoweredStation]) -> Option<LogColumn> {
+        let node = column.node("probe")?;
+        let name = node.text()?;
+        let probes = |station: &LoweredStation| -> Vec<String> { station.probes.iter().map(|probe| format!("{}/{probe}", station.name)).collect() };
+        let place = stations
+            .iter()
+            .enumerate()
+            .find_map(|(index, station)| Some((index, probes(station).iter().position(|known| known == name)?)));
+        let Some((station, probe)) = place else {
+            let known: Vec<_> = stations.iter().flat_map(probes).collect();
+            self.unknown(node, "unknown-place", "the probe", known.iter().map(String::as_str));
+            return None;
+        };
+        Some(LogColumn {
+            station,
+            probe,
+            column: column.text("column")?.to_owned(),
+            unit: column.text("unit")?.to_owned(),
+            noise: column.number("noise")?,
+        })
     }
 }
 

@@ -16,14 +16,14 @@ mod material;
 mod outside;
 mod probe;
 mod profile;
-mod quantities;
+pub(super) mod quantities;
 mod start;
 mod station;
 mod surroundings;
 mod view;
 mod wait;
 
-use super::checked::{CaseFile, Input, InputValue};
+use super::checked::{CaseFile, Input, InputValue, LogFormat};
 use super::findings::Findings;
 use super::keys::VERSION;
 use super::suggest;
@@ -50,7 +50,7 @@ pub(super) struct Lowering<'a> {
 const TOLERANCE: f64 = 0.05;
 
 /// Builds the model; `None` when something was found that forbids it.
-pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
+pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<(Model, Option<LogFormat>)> {
     let case = root.table()?;
     lowering.version(case);
     let title = lowering.title(case);
@@ -68,7 +68,7 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
     let allowance = lowering.allowance(case);
     let tolerance = lowering.tolerance(case);
     materials.finish(&mut lowering);
-    lowering.later(root, &stations, profile.as_ref());
+    let log_format = lowering.later(root, &stations, profile.as_ref());
     let parts = ModelParts {
         title,
         surroundings: weather.surroundings?,
@@ -82,7 +82,8 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<Model> {
     if lowering.findings.diagnostics.has_errors() {
         return None;
     }
-    lowering.accept(Model::new(parts), &root.spot)
+    let model = lowering.accept(Model::new(parts), &root.spot)?;
+    Some((model, log_format))
 }
 
 impl Lowering<'_> {
@@ -99,7 +100,7 @@ impl Lowering<'_> {
     /// A key that is required here, because of something else.
     fn missing(&mut self, spot: &Spot, key: &str, why: &str) {
         self.error(
-            spot,
+            &self.findings.head(spot),
             "missing-key",
             format!("the key \"{key}\" is missing"),
             format!("\"{key}\" is required {why}"),
