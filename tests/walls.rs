@@ -132,10 +132,14 @@ pub struct Wall {
     pub heating: Option<Heating>,
     pub idle: Idle,
     pub outer: OuterFace,
+    /// What the sides of a bar lose, layer by layer.
+    pub sides: Vec<Losses>,
     pub start: f64,
     pub ambient: f64,
     /// Radiating surfaces, where they are not as warm as the air.
     pub surfaces: Option<f64>,
+    /// All that is around it, where it is more than the temperatures above.
+    pub around: Option<Surroundings>,
     pub phases: Vec<Phase>,
     /// Depths of probes.
     pub probes: Vec<f64>,
@@ -153,9 +157,11 @@ impl Wall {
             heating: None,
             idle: idle_without_loss()?,
             outer: insulated(),
+            sides: Vec::new(),
             start: 300.0,
             ambient: 300.0,
             surfaces: None,
+            around: None,
             phases: Vec::new(),
             probes: Vec::new(),
             waits: Vec::new(),
@@ -164,14 +170,37 @@ impl Wall {
     }
 
     pub fn model(self) -> Result<Model, ModelError> {
+        Model::new(self.parts("wall")?)
+    }
+
+    /// This wall and another one under its profile and surroundings; both keep their waits.
+    pub fn beside(self, other: Self, name: &str) -> Result<Model, ModelError> {
+        let mut parts = self.parts("wall")?;
+        for (index, (place, below)) in other.waits.iter().enumerate() {
+            parts.waits.push(Wait::new(format!("W{index}"), 1, *place, temperature(*below))?);
+        }
+        parts.stations.extend(other.parts(name)?.stations);
+        Model::new(parts)
+    }
+
+    /// Other stations under this wall's profile and surroundings.
+    pub fn with_stations(self, stations: Vec<Station>) -> Result<Model, ModelError> {
+        let parts = self.parts("wall")?;
+        Model::new(ModelParts { stations, ..parts })
+    }
+
+    fn parts(self, name: &str) -> Result<ModelParts, ModelError> {
         let mut station = Station::new(StationValues {
-            name: "wall".into(),
+            name: name.into(),
             shape: self.shape,
             layers: self.layers,
             heating: self.heating,
             idle: self.idle,
             outer: self.outer,
         })?;
+        if !self.sides.is_empty() {
+            station = station.with_sides(self.sides)?;
+        }
         for (index, depth) in self.probes.iter().enumerate() {
             station = station.with_probe(format!("P{index}"), metres(*depth), None, seconds(0.0))?;
         }
@@ -181,14 +210,17 @@ impl Wall {
             .enumerate()
             .map(|(index, (place, below))| Wait::new(format!("W{index}"), 0, *place, temperature(*below)));
         let waits = waits.collect::<Result<Vec<_>, _>>()?;
-        Model::new(ModelParts {
+        Ok(ModelParts {
             title: "check".into(),
-            surroundings: Surroundings::new(
-                temperature(self.ambient),
-                temperature(self.surfaces.unwrap_or(self.ambient)),
-                Pressure::new::<pascal>(101_325.0),
-                flux(0.0),
-            )?,
+            surroundings: match self.around {
+                Some(around) => around,
+                None => Surroundings::new(
+                    temperature(self.ambient),
+                    temperature(self.surfaces.unwrap_or(self.ambient)),
+                    Pressure::new::<pascal>(101_325.0),
+                    flux(0.0),
+                )?,
+            },
             start: temperature(self.start),
             profile: Profile::new(self.phases),
             stations: vec![station],

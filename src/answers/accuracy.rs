@@ -46,7 +46,12 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         profile_times: last_burn_start(model).into_iter().collect(),
         ..Keep::default()
     };
-    let wanted = WANTED_SHARE * model.tolerance;
+    // A hot end that follows another wall can't be surer than that wall.
+    let inherited = station
+        .followed()
+        .and_then(|followed| followed.course.as_ref())
+        .map_or(0.0, |course| course.error());
+    let wanted = WANTED_SHARE * (model.tolerance - inherited).max(0.1 * model.tolerance);
     let mut step_tolerance = STEP_SHARE * model.tolerance;
     let mut fineness = 1.0;
     let mut before = f64::INFINITY;
@@ -67,7 +72,7 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
             return Ok(Resolved {
                 grid,
                 pass,
-                estimated_error,
+                estimated_error: estimated_error + inherited,
                 step_tolerance,
             });
         }

@@ -1,6 +1,6 @@
 //! Is the case sound: the grid, the phases, what heats the wall now.
 
-use super::accuracy::resolve;
+use super::follow::resolve_all;
 use super::pass::PassSettings;
 use crate::model::{HeatingModel, Kelvin, LogRows, Model, PhaseKind, Profile, STEFAN_BOLTZMANN, Seconds};
 use crate::run::RunError;
@@ -25,7 +25,7 @@ pub struct StationCheck {
     pub heating: Option<HeatingCheck>,
 }
 
-/// What heats a wall of one temperature, at level 1; a heating log as at its first row.
+/// What heats a wall of one temperature, at level 1; a heating log as at its first row, a followed face at its hottest.
 #[derive(Clone, Debug)]
 pub struct HeatingCheck {
     /// The wall's temperature.
@@ -64,16 +64,22 @@ pub struct PhaseCheck {
 /// # Errors
 /// When the trial run that makes the grid fails.
 pub fn check(model: &Model, wall: Option<Kelvin>) -> Result<CheckAnswers, RunError> {
-    let wall = wall.unwrap_or(model.start);
     let mut stations = Vec::new();
+    let walls = resolve_all(model, |_| PassSettings::default())?;
     for (index, station) in model.stations.iter().enumerate() {
-        let resolved = resolve(model, index, &PassSettings::default())?;
+        let resolved = &walls[index].resolved;
+        let own_start = station.start.as_ref().and_then(|start| start.hot_face());
+        let wall = wall.or(own_start).unwrap_or(model.start);
         let heating = station.heating.as_ref().map(|heating| {
             let (coefficient, gas_temperature, flux) = match &heating.model {
                 HeatingModel::Film {
                     coefficient,
                     gas_temperature,
                 } => (Some(*coefficient), Some(*gas_temperature), None),
+                HeatingModel::Wall(followed) => {
+                    let hottest = walls[index].hottest_followed().unwrap_or(model.start);
+                    (Some(followed.conductance), Some(hottest), None)
+                }
                 HeatingModel::Flux(flux) => (None, None, Some(*flux)),
                 HeatingModel::Log(LogRows::Flux { rows, .. }) => (None, None, rows.first().map(|row| row.1)),
                 HeatingModel::Log(LogRows::Film { rows }) => (rows.first().map(|row| row.1), rows.first().map(|row| row.2), None),

@@ -2,6 +2,7 @@
 
 mod accuracy;
 mod check;
+mod follow;
 mod log;
 mod pass;
 mod run;

@@ -100,6 +100,12 @@ impl Plan {
         {
             plan.watch_table(layers - 1, "emissivity", table, outer_face, Quantity::Coolest(layers - 1));
         }
+        for (index, side) in station.sides.iter().enumerate() {
+            if let Some(table) = &side.emissivity {
+                let hottest = Quantity::Place(Place::Layer(index));
+                plan.watch_table(index, "side_emissivity", table, hottest, Quantity::Coolest(index));
+            }
+        }
         for (index, wait) in model.waits.iter().enumerate().filter(|(_, wait)| wait.station == station_index) {
             plan.watch(Quantity::Place(wait.place), wait.below, LevelOf::Wait(index));
         }

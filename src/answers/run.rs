@@ -1,6 +1,7 @@
 //! What happens: peaks, margins, soak-back, approach to steady state, waits, energy balance.
 
-use super::accuracy::{Resolved, last_burn_start, resolve};
+use super::accuracy::{Resolved, last_burn_start};
+use super::follow::{ResolvedWall, informed, resolve_all};
 use super::log::{self, reading_times};
 use super::pass::{Keep, LevelOf, Pass, PassSettings, kept, limits};
 use super::steady::{Burn, steady};
@@ -47,27 +48,20 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
     let count = model.stations.len();
     let logged = options.log.iter().filter_map(|readings| readings.points.last()).map(|point| point.0);
     let asked = options.times.iter().copied().chain(logged).fold(0.0, f64::max);
-    let mut resolved = Vec::with_capacity(count);
-    for index in 0..count {
-        let share = |clock: Seconds| (index as f64 + (clock / written_end.max(1.0)).min(1.0)) / (2 * count) as f64;
-        let progress = options.progress.map(|progress| move |clock: Seconds| progress(share(clock)));
-        let progress = progress.as_ref().map(|progress| progress as &(dyn Fn(Seconds) + Sync));
-        resolved.push(resolve(
-            model,
-            index,
-            &PassSettings {
-                stop: options.stop,
-                progress,
-                ..PassSettings::default()
-            },
-        )?);
-    }
-    let until = resolved
-        .iter()
-        .map(|resolved| resolved.pass.watcher.computed_until())
-        .fold(asked, f64::max);
+    let progress: Vec<_> = (0..count)
+        .map(|place| {
+            let share = move |clock: Seconds| (place as f64 + (clock / written_end.max(1.0)).min(1.0)) / (2 * count) as f64;
+            options.progress.map(|progress| move |clock: Seconds| progress(share(clock)))
+        })
+        .collect();
+    let walls = resolve_all(model, |place| PassSettings {
+        stop: options.stop,
+        progress: progress[place].as_ref().map(|progress| progress as &(dyn Fn(Seconds) + Sync)),
+        ..PassSettings::default()
+    })?;
+    let until = walls.iter().map(|wall| wall.resolved.pass.watcher.computed_until()).fold(asked, f64::max);
     let step_ends = if options.history && options.times.is_empty() {
-        own_times(model, &resolved, until, options)?
+        own_times(&walls, until, options)?
     } else {
         Vec::new()
     };
@@ -77,8 +71,9 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
     let mut compared = Vec::new();
     let mut findings = Vec::new();
     let mut inside = true;
-    for (index, resolved) in resolved.iter().enumerate() {
-        let station = &model.stations[index];
+    for (index, wall) in walls.iter().enumerate() {
+        let (own, resolved) = (&*wall.model, &wall.resolved);
+        let station = &own.stations[index];
         let last_burn_start = last_burn_start(model);
         let settings = PassSettings {
             step_tolerance: resolved.step_tolerance,
@@ -102,7 +97,7 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
                 keep.profile_times.sort_by(f64::total_cmp);
                 keep.profile_times.dedup();
             }
-            longer = Some(Pass::of_profile(model, index, &resolved.grid, &settings, &keep)?);
+            longer = Some(Pass::of_profile(own, index, &resolved.grid, &settings, &keep)?);
         }
         let pass = longer.as_ref().unwrap_or(&resolved.pass);
         let from = last_burn_start.and_then(|start| pass.profiles.iter().find(|profile| profile.0 == start));
@@ -111,7 +106,7 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
             (Some(start), Some(burnt)) => {
                 let from = if start > 0.0 { &from[..] } else { &[] };
                 steady(
-                    model,
+                    own,
                     index,
                     &resolved.grid,
                     &settings,
@@ -124,7 +119,7 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
             }
             _ => Steady::None,
         };
-        inside &= !model.allowance.given || keeps_allowance(model, index, resolved, options)?;
+        inside &= !model.allowance.given || keeps_allowance(model, index, &walls, options)?;
         findings.extend(found(model, station, pass, resolved));
         let mut answered = answers(model, index, pass, resolved, state);
         if !options.log.is_empty() {
@@ -161,8 +156,10 @@ pub fn run(model: &Model, options: &RunOptions<'_>) -> Result<RunOutcome, RunErr
 }
 
 /// Whether every limit of a station is kept with the allowance taken off it and put on the heating.
-fn keeps_allowance(model: &Model, index: usize, resolved: &Resolved, options: &RunOptions<'_>) -> Result<bool, RunError> {
+fn keeps_allowance(model: &Model, index: usize, walls: &[ResolvedWall<'_>], options: &RunOptions<'_>) -> Result<bool, RunError> {
     let doubted = model.with_heating_times(model.allowance.heating);
+    let doubted = informed(&doubted, index, &|followed| walls.get(followed).map(|wall| &wall.resolved), options.stop)?;
+    let resolved = &walls[index].resolved;
     let settings = PassSettings {
         step_tolerance: resolved.step_tolerance,
         off_limits: model.allowance.limits,
@@ -463,9 +460,10 @@ fn sorted(times: &[Seconds]) -> Vec<Seconds> {
 }
 
 /// Clocks dense enough to draw every curve of every station.
-fn own_times(model: &Model, resolved: &[Resolved], until: Seconds, options: &RunOptions<'_>) -> Result<Vec<Seconds>, RunError> {
+fn own_times(walls: &[ResolvedWall<'_>], until: Seconds, options: &RunOptions<'_>) -> Result<Vec<Seconds>, RunError> {
     let mut times = vec![0.0];
-    for (index, resolved) in resolved.iter().enumerate() {
+    for (index, wall) in walls.iter().enumerate() {
+        let resolved = &wall.resolved;
         let settings = PassSettings {
             step_tolerance: resolved.step_tolerance,
             until: Some(until),
@@ -476,7 +474,7 @@ fn own_times(model: &Model, resolved: &[Resolved], until: Seconds, options: &Run
             both_sides: true,
             ..Keep::default()
         };
-        let pass = Pass::of_profile(model, index, &resolved.grid, &settings, &keep)?;
+        let pass = Pass::of_profile(&wall.model, index, &resolved.grid, &settings, &keep)?;
         let mut before = 0.0;
         for (end, rows) in pass.step_ends {
             times.extend((1..rows).map(|row| before + (end - before) * row as f64 / rows as f64));
@@ -484,7 +482,7 @@ fn own_times(model: &Model, resolved: &[Resolved], until: Seconds, options: &Run
             before = end;
         }
     }
-    times.extend(model.profile.starts());
+    times.extend(walls.iter().take(1).flat_map(|wall| wall.model.profile.starts()));
     Ok(sorted(&times))
 }
 

@@ -28,21 +28,22 @@ pub(super) fn steady(model: &Model, station_index: usize, grid: &Grid, settings:
     let logged = station
         .heating
         .as_ref()
-        .is_none_or(|heating| matches!(heating.model, HeatingModel::Log(_)));
+        .is_none_or(|heating| matches!(heating.model, HeatingModel::Log(_) | HeatingModel::Wall(_)));
     let segments = Timeline::of_endless_burn(model, station, burn.start);
     let Some(endless) = segments.last().filter(|_| !logged).map(|segment| segment.forcing) else {
         return Ok(Steady::None);
     };
     let mut course = Course::new(station, &model.surroundings, grid, model.start, settings.step_tolerance);
     let start = course.unknowns().to_vec();
+    let cold = course.wall.map(0).start_temperatures(station, model.start);
     course.wall.set_forcing([endless]);
     let Equilibrium::At(rest) = equilibrium(&mut course.wall, &start) else {
         return Ok(Steady::None);
     };
     let last = rest.len() - 1;
     let reached = |node: usize, now: Kelvin| {
-        let rise = rest[node] - model.start;
-        (rise.abs() >= LEAST_RISE).then(|| (now - model.start) / rise)
+        let rise = rest[node] - cold[node];
+        (rise.abs() >= LEAST_RISE).then(|| (now - cold[node]) / rise)
     };
     let faces = [0, last];
     let lowest = |moment: &Moment<'_>, theta: f64| {
@@ -51,11 +52,7 @@ pub(super) fn steady(model: &Model, station_index: usize, grid: &Grid, settings:
             .filter_map(|node| reached(*node, moment.temperature(*node, theta)))
             .fold(f64::INFINITY, f64::min)
     };
-    let from: Vec<Kelvin> = if burn.from.is_empty() {
-        rest.iter().map(|_| model.start).collect()
-    } else {
-        burn.from.to_vec()
-    };
+    let from: Vec<Kelvin> = if burn.from.is_empty() { cold.clone() } else { burn.from.to_vec() };
     let mut arrived = (faces.iter().filter_map(|node| reached(*node, from[*node])).all(|share| share >= ARRIVED)).then_some(0.0);
     let keep = Keep::default();
     let stretch = |segments, from, last_phase| Stretch {

@@ -217,7 +217,7 @@ pub enum EvenedOut {
 /// If the last burn went on for ever, everything of that phase held.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Steady {
-    /// There is none: no burn, a heating log, or nothing balances the heat.
+    /// There is none: no burn, a heating log, a hot end that follows another wall, or nothing balances the heat.
     None,
     /// There is one.
     At(SteadyState),
@@ -285,7 +285,7 @@ pub struct Energy {
     pub inward: JoulesPerSquareMetre,
     /// What came in over the hot face, without what went back.
     pub gross_inward: JoulesPerSquareMetre,
-    /// Net heat out over the outer face.
+    /// Net heat out over the outer face, and over the sides of a bar.
     pub outward: JoulesPerSquareMetre,
     /// What went out over the outer face, without what came back.
     pub gross_outward: JoulesPerSquareMetre,
@@ -382,7 +382,7 @@ pub struct TraceRow {
     pub probes: Vec<(Kelvin, Kelvin)>,
     /// Heat into the wall over the hot face.
     pub flux_in: WattsPerSquareMetre,
-    /// Heat out over the outer face, per area of that face.
+    /// Heat out over the outer face, per area of that face; of a bar over its sides and far end, per section at the heated end.
     pub flux_out: WattsPerSquareMetre,
 }
 

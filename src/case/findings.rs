@@ -64,6 +64,16 @@ impl Findings {
         );
     }
 
+    /// Where to say that something is missing: an inline table is pointed at by its brace, as underlining all of it says nothing.
+    pub fn head(&self, spot: &Spot) -> Spot {
+        let text = self.diagnostics.sources.get(spot.source).map_or("", |source| source.text.as_str());
+        let mut head = spot.clone();
+        if text.get(spot.range.clone()).is_some_and(|written| written.starts_with('{')) {
+            head.range.end = head.range.start + 1;
+        }
+        head
+    }
+
     /// Where a value with this spot comes from.
     pub fn origin(&self, spot: &Spot) -> &'static str {
         match self.diagnostics.sources.get(spot.source) {

@@ -28,8 +28,11 @@ impl Form<'_> {
                 }
             }
         }
+        let name = table.entry("name").filter(|_| section.is_named());
+        let head = self.findings.head(spot);
+        let blamed = name.filter(|_| head != *spot).map_or(head, |name| name.node.words());
         for key in section.keys.iter().filter(|key| key.required && !table.has(key.name)) {
-            self.findings.at(spot, missing(key.name, &key.expect, section.title));
+            self.findings.at(&blamed, missing(key.name, &key.expect, section.title));
         }
     }
 
@@ -40,7 +43,7 @@ impl Form<'_> {
             (Value::Bad, _) => {}
             // Found in order before: a value of a ready profile.
             (value @ (Value::Number(_) | Value::Points(_)), _) => node.value = value,
-            (value, Expect::Free) => node.value = value,
+            (value, Expect::Free | Expect::FreeTable) => node.value = value,
             (value, Expect::OneOf(choices)) => {
                 let choice = choices.iter().find(|choice| accepts(choice, &value));
                 let choice = choice.or_else(|| choices.iter().find(|choice| nearly_accepts(choice, &value)));
@@ -392,7 +395,7 @@ fn accepts(expect: &Expect, value: &Value) -> bool {
         Expect::List(_) | Expect::Sections(_) => matches!(value, Value::List(_)),
         Expect::Section(_) | Expect::Named(_) => matches!(value, Value::Table(_)),
         Expect::OneOf(choices) => choices.iter().any(|choice| accepts(choice, value)),
-        Expect::Free => true,
+        Expect::Free | Expect::FreeTable => true,
     }
 }
 
@@ -438,7 +441,7 @@ pub(super) fn due(expect: &Expect) -> String {
         Expect::Section(section) | Expect::Named(section) => format!("{} is due, as a table", section.title),
         Expect::Sections(section) => format!("a list of tables is due: {}", section.title),
         Expect::OneOf(choices) => choices.iter().map(due).collect::<Vec<_>>().join("; or "),
-        Expect::Free => "a value is due".to_owned(),
+        Expect::Free | Expect::FreeTable => "a value is due".to_owned(),
     }
 }
 

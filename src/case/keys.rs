@@ -1,7 +1,7 @@
 //! Every key of the case file: its name, what it means, what is expected there, and the numbers that make sense. Keys of features that are not built yet stand
 //! here too: they are known names.
 
-use super::library;
+use super::{library, ready};
 use crate::units::Kind;
 
 /// Numbers that make sense, in SI.
@@ -94,6 +94,8 @@ pub(super) enum Expect {
     OneOf(&'static [Expect]),
     /// Looked at where it is used.
     Free,
+    /// A table whose keys and values are looked at where they are used.
+    FreeTable,
 }
 
 /// A key.
@@ -178,6 +180,10 @@ fn materials() -> Vec<&'static str> {
     let mut names: Vec<_> = library::names().collect();
     names.sort_unstable();
     names
+}
+
+fn profiles() -> Vec<&'static str> {
+    ready::names().collect()
 }
 
 fn places() -> Vec<&'static str> {
@@ -393,8 +399,12 @@ static PROFILE: Section = Section {
             "Pressure log instead of phases: one burn; columns time_s and pressure_Pa.",
             Expect::Text,
         ),
-        key("use", "A ready profile, by name or by path of a file, instead of phases.", Expect::Text),
-        key("values", "Values for the ready profile.", Expect::Free),
+        key(
+            "use",
+            "A ready profile, by name or by path of a file, instead of phases.",
+            Expect::Known(profiles),
+        ),
+        key("values", "Values for the ready profile.", Expect::FreeTable),
     ],
 };
 
@@ -986,7 +996,7 @@ static VARIANT: Section = Section {
         required(
             "set",
             "Inputs by their paths, and the values they take: { \"surroundings.air\" = \"40 degC\" }.",
-            Expect::Free,
+            Expect::FreeTable,
         ),
     ],
 };
@@ -1015,7 +1025,7 @@ static SPREAD: Section = Section {
             "true: one draw for all stations that the path names with *. Default false.",
             Expect::Switch,
         ),
-        key("with", "Correlation with other inputs of the list, by their paths.", Expect::Free),
+        key("with", "Correlation with other inputs of the list, by their paths.", Expect::FreeTable),
     ],
 };
 

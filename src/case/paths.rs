@@ -174,7 +174,7 @@ fn walk(node: Option<&Node>, expect: &'static Expect, segments: &[Segment], step
             (Ok(index), Some(items)) if index < items.len() => next(Step::Item(index), items.get(index), item),
             _ => Err(no_parts(segment)),
         },
-        Expect::Free => {
+        Expect::Free | Expect::FreeTable => {
             let inner = table_of(node, segment)?.and_then(|table| table.node(&segment.name));
             next(key(), inner, &FREE)
         }

@@ -221,6 +221,7 @@ fn value(expect: &'static Expect, definitions: &mut Named) -> Schema {
             ..Schema::default()
         },
         Expect::Free => Schema::default(),
+        Expect::FreeTable => of_kind("object"),
     }
 }
 

@@ -110,7 +110,7 @@ fn read_value(setting: &str, start: usize, expect: &Expect, source: usize, findi
 /// Whether a bare number or switch may stand there.
 fn takes_bare(expect: &Expect) -> bool {
     match expect {
-        Expect::Number(_) | Expect::Whole(..) | Expect::Version | Expect::Switch | Expect::Free => true,
+        Expect::Number(_) | Expect::Whole(..) | Expect::Version | Expect::Switch | Expect::Free | Expect::FreeTable => true,
         Expect::Property(kind, _) => kind.si().is_empty(),
         Expect::OneOf(choices) => choices.iter().any(takes_bare),
         _ => false,

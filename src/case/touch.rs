@@ -65,6 +65,12 @@ mod tests {
         assert_eq!(celsius(1.01), Some(55.0));
         assert_eq!(celsius(61.0), Some(48.0));
         assert_eq!(celsius(28_800.0), Some(43.0));
+        // Long contacts are alike on every surface: heat has time to come through (ISO 13732-1:2006, Table 1, from memory).
+        for surface in crate::case::keys::TOUCH_SURFACES {
+            let long = |contact| threshold(contact, surface).map(|found| (found.kelvin - 273.15).round());
+            assert_eq!((long(600.0), long(28_800.0)), (Some(48.0), Some(43.0)), "{surface}");
+            assert!(long(1.0) > long(10.0) && long(10.0) > long(60.0) && long(60.0) > long(600.0), "{surface}");
+        }
         assert_eq!(celsius(0.5), None);
         assert_eq!(celsius(30_000.0), None);
     }

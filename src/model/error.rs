@@ -53,6 +53,12 @@ pub enum ModelError {
         /// The wait's name.
         wait: String,
     },
+    /// A station that follows no other station, or at last itself.
+    #[error("the station \"{station}\" follows a station that is not there, or at last itself")]
+    FollowsNothing {
+        /// The station's name.
+        station: String,
+    },
     /// A depth outside its wall.
     #[error("the probe \"{probe}\" lies at {depth} m, outside the wall")]
     OutsideTheWall {

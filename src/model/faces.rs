@@ -106,6 +106,8 @@ pub enum HeatingModel {
     Flux(WattsPerSquareMetre),
     /// Rows against time from the start of each burn; level, ramp and tail don't act.
     Log(LogRows),
+    /// Another station's face, at all times, burn and after; level, ramp and tail don't act, and the idle hot face does not either.
+    Wall(super::Followed),
 }
 
 impl HeatingModel {
@@ -259,6 +261,18 @@ impl Idle {
             solar_absorptivity: 0.0,
             purge: None,
         })
+    }
+
+    /// A hot end that never idles, since it follows another wall at all times.
+    pub fn never() -> Self {
+        Self {
+            coefficient: 0.0,
+            temperature: super::ROOM,
+            emissivity: Table::constant(uom::si::f64::Ratio::new::<uom::si::ratio::ratio>(0.0)),
+            view: 0.0,
+            solar_absorptivity: 0.0,
+            purge: None,
+        }
     }
 
     /// The same face absorbing this share of the sun.

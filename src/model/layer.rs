@@ -2,7 +2,7 @@
 
 use super::{Kelvin, Material, Metres, ModelError, Seconds, WattsPerSquareMetreKelvin};
 use std::sync::Arc;
-use uom::si::f64::{HeatTransfer, Length, ThermodynamicTemperature, Time};
+use uom::si::f64::{Area, HeatTransfer, Length, ThermodynamicTemperature, Time};
 
 /// One layer of a wall.
 #[derive(Clone, Debug)]
@@ -13,6 +13,30 @@ pub struct Layer {
     pub(crate) limit: Option<Limit>,
     /// What lies between this layer and the next; `None`: perfect contact without a limit.
     pub(crate) joint: Option<Joint>,
+    /// In a bar: its cross-section.
+    pub(crate) cross_section: Option<CrossSection>,
+}
+
+/// Cross-section of a layer of a bar.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct CrossSection {
+    /// Area, m².
+    pub(crate) area: f64,
+    /// Perimeter.
+    pub(crate) perimeter: Metres,
+}
+
+impl CrossSection {
+    /// A cross-section of this area and perimeter.
+    ///
+    /// # Errors
+    /// When either is not above zero.
+    pub fn new(area: Area, perimeter: Length) -> Result<Self, ModelError> {
+        Ok(Self {
+            area: ModelError::above_zero("section", area.value)?,
+            perimeter: ModelError::above_zero("perimeter", perimeter.value)?,
+        })
+    }
 }
 
 impl Layer {
@@ -27,6 +51,7 @@ impl Layer {
             thickness: ModelError::above_zero("thickness", thickness.value)?,
             limit: None,
             joint: None,
+            cross_section: None,
         })
     }
 
@@ -41,6 +66,13 @@ impl Layer {
     #[must_use]
     pub fn with_joint(mut self, joint: Option<Joint>) -> Self {
         self.joint = joint;
+        self
+    }
+
+    /// The same layer as a length of a bar.
+    #[must_use]
+    pub fn with_cross_section(mut self, cross_section: CrossSection) -> Self {
+        self.cross_section = Some(cross_section);
         self
     }
 

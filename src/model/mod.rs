@@ -5,12 +5,14 @@
 
 mod error;
 mod faces;
+mod follow;
 mod layer;
 mod material;
 mod profile;
 mod question;
 mod readings;
 mod si;
+mod start;
 mod station;
 mod table;
 
@@ -19,12 +21,14 @@ pub use faces::{
     Convection, Coolant, CoolantPhases, ForcedSurface, Heating, HeatingModel, Idle, LogRows, Losses, NaturalSurface, OuterFace, Outside, Purge,
     Surroundings,
 };
-pub use layer::{Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
+pub use follow::{FaceCourse, Followed, FollowedFace, Outlook};
+pub use layer::{CrossSection, Gap, GapGas, Joint, Layer, Limit, LimitKind, LimitOrigin, Resistance};
 pub use material::{Material, MaterialValues};
 pub use profile::{Phase, PhaseKind, Profile};
 pub use question::{Allowance, Place, Wait};
 pub use readings::Readings;
 pub use si::*;
+pub use start::StartProfile;
 pub use station::{Probe, Shape, Station, StationValues};
 pub use table::{Table, TablePoint};
 
@@ -35,7 +39,7 @@ pub struct Model {
     pub(crate) title: String,
     /// Air, surfaces, pressure, wind and sun around every station.
     pub(crate) surroundings: Surroundings,
-    /// Uniform temperature of every wall at time 0.
+    /// Uniform temperature of every wall at time 0, of those that do not start from a profile of their own.
     pub(crate) start: Kelvin,
     /// What the engine does, phase by phase.
     pub(crate) profile: Profile,
@@ -56,7 +60,7 @@ pub struct ModelParts {
     pub title: String,
     /// Air, surfaces, pressure, wind and sun.
     pub surroundings: Surroundings,
-    /// Uniform temperature of every wall at time 0.
+    /// Uniform temperature of every wall at time 0, of those that do not start from a profile of their own.
     pub start: uom::si::f64::ThermodynamicTemperature,
     /// What the engine does.
     pub profile: Profile,
@@ -74,7 +78,7 @@ impl Model {
     /// Puts a model together.
     ///
     /// # Errors
-    /// When there is no station, two have one name, the start or the tolerance is not above zero, a wait names a place that its station
+    /// When there is no station, two have one name, one follows a station that is not there or (by whatever way) itself, the start or the tolerance is not above zero, a wait names a place that its station
     /// does not have, or a burn meets a station without heating.
     pub fn new(parts: ModelParts) -> Result<Self, ModelError> {
         if parts.stations.is_empty() {
@@ -90,6 +94,23 @@ impl Model {
                 return Err(ModelError::Missing {
                     what: "heating, while the profile has a burn",
                 });
+            }
+        }
+        for (index, station) in parts.stations.iter().enumerate() {
+            // A chain of followed stations that is longer than there are stations comes back to itself.
+            let mut at = station;
+            let mut links = 0;
+            while let Some(followed) = at.followed() {
+                let next = parts.stations.iter().find(|other| other.name == followed.station);
+                links += 1;
+                match next {
+                    Some(next) if links <= parts.stations.len() => at = next,
+                    _ => {
+                        return Err(ModelError::FollowsNothing {
+                            station: parts.stations[index].name.clone(),
+                        });
+                    }
+                }
             }
         }
         for wait in &parts.waits {
@@ -138,6 +159,24 @@ impl Model {
     /// What is taken off limits and put on heating.
     pub fn allowance(&self) -> &Allowance {
         &self.allowance
+    }
+
+    /// Index of the station that a station's hot end follows.
+    pub fn followed_by(&self, station: usize) -> Option<usize> {
+        let followed = self.stations.get(station)?.followed()?;
+        self.stations.iter().position(|other| other.name == followed.station)
+    }
+
+    /// The same model with the hot end of one station, which follows another's face, told how that face goes.
+    #[must_use]
+    pub fn with_face_course(&self, station: usize, course: FaceCourse) -> Self {
+        let mut other = self.clone();
+        if let Some(heating) = &mut other.stations[station].heating
+            && let HeatingModel::Wall(followed) = &mut heating.model
+        {
+            followed.course = Some(std::sync::Arc::new(course));
+        }
+        other
     }
 
     /// The same model with every heating factor multiplied: the second run by which the allowance judges.

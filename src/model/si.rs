@@ -19,6 +19,8 @@ pub type JoulesPerSquareMetre = f64;
 /// Absolute pressure, Pa.
 pub type Pascals = f64;
 
+/// Stands where a temperature is asked for and acts on nothing, K.
+pub(crate) const ROOM: Kelvin = 293.15;
 /// Stefan–Boltzmann constant, W/(m²·K⁴): exact in the SI since 2019 to the digits given (CODATA 2018).
 pub const STEFAN_BOLTZMANN: f64 = 5.670_374_419e-8;
 /// Standard acceleration of free fall, m/s² (3rd CGPM, 1901).

@@ -1,6 +1,6 @@
 //! One wall section.
 
-use super::{Heating, Idle, Layer, Metres, ModelError, OuterFace, Place, Resistance, Seconds};
+use super::{CrossSection, Heating, Idle, Layer, Losses, Metres, ModelError, OuterFace, Place, Resistance, Seconds, StartProfile};
 use uom::si::f64::{Length, Time};
 
 /// How heat spreads through the wall.
@@ -13,6 +13,8 @@ pub enum Shape {
         /// Radius of the hot face.
         inner_radius: Metres,
     },
+    /// A bar heated at one end: each layer is a length of it, with a cross-section of its own, and may lose heat from its sides.
+    Bar,
 }
 
 impl Shape {
@@ -24,19 +26,6 @@ impl Shape {
         Ok(Self::Cylinder {
             inner_radius: ModelError::above_zero("inner diameter", inner_diameter.value)? / 2.0,
         })
-    }
-
-    /// Area at a depth, m, over the area of the hot face.
-    pub fn area_ratio(self, depth: Metres) -> f64 {
-        match self {
-            Self::Plane => 1.0,
-            Self::Cylinder { inner_radius } => (inner_radius + depth) / inner_radius,
-        }
-    }
-
-    /// Volume between two depths, m, per area of the hot face, m.
-    pub fn volume(self, from: Metres, to: Metres) -> Metres {
-        (to - from) * self.area_ratio(0.5 * (from + to))
     }
 }
 
@@ -63,6 +52,10 @@ pub struct Station {
     pub(crate) idle: Idle,
     pub(crate) outer: OuterFace,
     pub(crate) probes: Vec<Probe>,
+    /// What takes heat from the sides of a bar, layer by layer; empty: nothing does.
+    pub(crate) sides: Vec<Losses>,
+    /// Where it starts; `None`: at the model's start temperature.
+    pub(crate) start: Option<StartProfile>,
 }
 
 /// The parts of a [`Station`], for [`Station::new`].
@@ -86,7 +79,7 @@ impl Station {
     /// A wall section without probes.
     ///
     /// # Errors
-    /// When it has no layer, two layers share a name, or the outermost layer has a joint.
+    /// When it has no layer, two layers share a name, the outermost layer has a joint, or a layer of a bar has no cross-section.
     pub fn new(values: StationValues) -> Result<Self, ModelError> {
         let Some(outermost) = values.layers.last() else {
             return Err(ModelError::Missing { what: "a layer" });
@@ -100,6 +93,11 @@ impl Station {
             if values.layers[..index].iter().any(|earlier| earlier.name == layer.name) {
                 return Err(ModelError::Repeated { name: layer.name.clone() });
             }
+        }
+        if values.shape == Shape::Bar && values.layers.iter().any(|layer| layer.cross_section.is_none()) {
+            return Err(ModelError::Missing {
+                what: "the cross-section of a layer of a bar",
+            });
         }
         let StationValues {
             name,
@@ -117,7 +115,71 @@ impl Station {
             idle,
             outer,
             probes: Vec::new(),
+            sides: Vec::new(),
+            start: None,
         })
+    }
+
+    /// The same bar losing heat from its sides: one entry for each layer, all per area of that side (a round bar broadside to the sun catches 1/π of it).
+    /// A coolant in them is not counted.
+    ///
+    /// # Errors
+    /// When it is no bar, or there are not as many entries as layers.
+    pub fn with_sides(mut self, sides: Vec<Losses>) -> Result<Self, ModelError> {
+        if self.shape != Shape::Bar || sides.len() != self.layers.len() {
+            return Err(ModelError::Missing {
+                what: "a bar with an entry of side losses for each layer",
+            });
+        }
+        self.sides = sides;
+        Ok(self)
+    }
+
+    /// The same station starting from a profile of its own, such as an earlier run left. Its layers are those of the station: a caller's promise.
+    #[must_use]
+    pub fn with_start(mut self, start: StartProfile) -> Self {
+        self.start = Some(start);
+        self
+    }
+
+    /// Area at a distance from the hot face, m, in a layer, over the area of the hot face (of a bar: its section at the heated end).
+    pub fn area_ratio(&self, layer: usize, distance: Metres) -> f64 {
+        match self.shape {
+            Shape::Plane => 1.0,
+            Shape::Cylinder { inner_radius } => (inner_radius + distance) / inner_radius,
+            Shape::Bar => match (self.layers[0].cross_section, self.layers[layer].cross_section) {
+                (Some(first), Some(own)) => own.area / first.area,
+                _ => 1.0,
+            },
+        }
+    }
+
+    /// Volume of a layer between two distances from the hot face, m, per area of the hot face, m.
+    pub fn volume(&self, layer: usize, from: Metres, to: Metres) -> Metres {
+        (to - from) * self.area_ratio(layer, 0.5 * (from + to))
+    }
+
+    /// Side area of a length of a layer, m, per area of the hot face; 0 except in a bar.
+    pub fn side_area(&self, layer: usize, length: Metres) -> f64 {
+        match (self.layers[0].cross_section, self.layers[layer].cross_section) {
+            (Some(CrossSection { area, .. }), Some(own)) if self.shape == Shape::Bar => own.perimeter * length / area,
+            _ => 0.0,
+        }
+    }
+
+    /// Area of the outer face over that of the hot face.
+    pub fn outer_area(&self) -> f64 {
+        self.area_ratio(self.layers.len() - 1, self.outer_distance())
+    }
+
+    /// Area through which a joint passes heat, over that of the hot face: where two lengths of a bar differ, the smaller one touches.
+    pub fn joint_area(&self, joint: usize) -> f64 {
+        let distance = self.distances()[joint] + self.layers[joint].thickness;
+        let inner = self.area_ratio(joint, distance);
+        match self.shape {
+            Shape::Bar => inner.min(self.area_ratio(joint + 1, distance)),
+            Shape::Plane | Shape::Cylinder { .. } => inner,
+        }
     }
 
     /// The same station with one more probe, at a depth from the hot face. On a boundary it lies on the hot side, unless `layer` says otherwise.
@@ -191,13 +253,24 @@ impl Station {
 
     /// Mass per area of the hot face, kg/m².
     pub fn mass(&self) -> f64 {
-        let part = |(layer, from): (&Layer, &Metres)| layer.material.density * self.shape.volume(*from, from + layer.thickness);
-        self.layers.iter().zip(&self.distances()).map(part).sum()
+        let part = |(index, from): (usize, Metres)| {
+            let layer = &self.layers[index];
+            layer.material.density * self.volume(index, from, from + layer.thickness)
+        };
+        self.distances().into_iter().enumerate().map(part).sum()
     }
 
     /// Distance of the outer face from the hot face, m, gaps included.
     pub fn outer_distance(&self) -> Metres {
         self.distances().last().copied().unwrap_or(0.0) + self.layers.last().map_or(0.0, |layer| layer.thickness)
+    }
+
+    /// The face of another station that the hot end follows, if it does.
+    pub fn followed(&self) -> Option<&super::Followed> {
+        match &self.heating.as_ref()?.model {
+            super::HeatingModel::Wall(followed) => Some(followed),
+            _ => None,
+        }
     }
 
     /// What resists the heat between layer `index` and the next; `None`: perfect contact.

@@ -56,6 +56,17 @@ fn heating_text(heating: &HeatingCheck, model: &Station, units: Units) -> String
         .heating
         .as_ref()
         .is_some_and(|heating| matches!(heating.model, HeatingModel::Log(_)));
+    if let Some(followed) = model.followed() {
+        let hottest = heating.gas_temperature.map_or_else(String::new, |value| figures.given(value));
+        return format!(
+            "follows the {} of {}, {hottest} at its hottest; wall at {}: {} into the wall then, conductance {} W/m²/K",
+            followed.face().word(),
+            followed.station(),
+            figures.given(heating.wall),
+            flux(heating.flux),
+            significant(heating.coefficient.unwrap_or(0.0), 4),
+        );
+    }
     let case = if log {
         "heating log (level, ramp and tail do not act on it), first row"
     } else {

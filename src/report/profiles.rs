@@ -4,14 +4,20 @@ use super::PROGRAM;
 use super::check::{PhaseRow, ValueCell};
 use crate::answers;
 use crate::case::{ReadyProfile, ReadyValue};
+use schemars::JsonSchema;
 use serde::Serialize;
 
 /// Ready profiles with their values, explanation and phases.
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 pub struct ProfilesDocument<'a> {
+    /// Name and version of this document.
+    #[schemars(extend("const" = "soakdown-profiles/1"))]
     format: &'static str,
+    /// Name and version of the program.
     program: &'static str,
+    /// The command as it would be typed again.
     command: &'a str,
+    /// The profiles asked for, the simplest first.
     profiles: Vec<ProfileRow<'a>>,
 }
 
@@ -27,15 +33,19 @@ impl<'a> ProfilesDocument<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
 struct ProfileRow<'a> {
+    /// Its name, or the path it was asked by.
     name: &'a str,
+    /// In a few words.
     title: &'a str,
+    /// What it stands for.
     explanation: &'a str,
+    /// What may be given in values.
     values: Vec<ValueRow<'a>>,
-    /// With the names in them.
+    /// The phases as the file has them, with the names of the values in them.
     written: &'a str,
-    /// With the defaults.
+    /// The phases with the defaults.
     phases: Vec<PhaseRow>,
 }
 
@@ -52,13 +62,18 @@ impl<'a> ProfileRow<'a> {
     }
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, Serialize, JsonSchema)]
+#[schemars(rename = "ProfileValueRow")]
 struct ValueRow<'a> {
+    /// Its name.
     name: &'a str,
     /// As a case would have it, without quotes.
     default: &'a str,
+    /// The default: a number in SI, a word or a switch.
     value: ValueCell<'a>,
+    /// SI unit; empty for pure numbers, words and switches.
     unit: &'a str,
+    /// What it is.
     meaning: &'a str,
 }
 

@@ -1,6 +1,6 @@
 //! The JSON Schema of the JSON documents, made from the structs that they are written from.
 
-use super::{CheckDocument, MaterialsDocument, ResultDocument};
+use super::{CheckDocument, MaterialsDocument, ProfilesDocument, ResultDocument};
 use schemars::generate::SchemaSettings;
 use serde_json::{Value, json};
 
@@ -14,6 +14,7 @@ pub fn results_schema() -> Value {
         generator.subschema_for::<ResultDocument<'static>>(),
         generator.subschema_for::<CheckDocument<'static>>(),
         generator.subschema_for::<MaterialsDocument<'static>>(),
+        generator.subschema_for::<ProfilesDocument<'static>>(),
     ];
     json!({
         "$schema": "https://json-schema.org/draft/2020-12/schema",

@@ -217,6 +217,7 @@ fn steady(answers: &RunAnswers, station: &StationAnswers, model: &Station, figur
         Steady::At(state) => steady_text(answers, station, state, figures),
         Steady::None => match model.heating.as_ref().map(|heating| &heating.model) {
             Some(HeatingModel::Log(_)) => "steady state: none looked for, the heating is a log".to_owned(),
+            Some(HeatingModel::Wall(_)) => "steady state: none looked for, the hot end follows another wall".to_owned(),
             _ => "steady state: none, nothing in this model balances the heat of an endless burn".to_owned(),
         },
     })

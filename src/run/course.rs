@@ -1,7 +1,7 @@
 //! Drives one wall through its segments.
 
 use super::Segment;
-use crate::model::{Kelvin, PhaseKind, Seconds, Station, Surroundings, WattsPerSquareMetre};
+use crate::model::{Kelvin, ModelError, Outside, PhaseKind, Seconds, Station, Surroundings, WattsPerSquareMetre};
 use crate::solve::{Flow, Integrator, Settings, Slot, SolveError, Step};
 use crate::wall::{Grid, NodeMap, Wall};
 use std::sync::atomic::{AtomicBool, Ordering};
@@ -21,6 +21,14 @@ pub enum RunError {
         /// What the integrator says.
         source: SolveError,
     },
+    /// The face that a hot end follows is not known.
+    #[error("station \"{station}\" follows a face whose course could not be had: {source}")]
+    Followed {
+        /// The station that follows.
+        station: String,
+        /// What was wrong with it.
+        source: ModelError,
+    },
     /// Somebody asked to stop.
     #[error("interrupted")]
     Interrupted,
@@ -38,17 +46,25 @@ pub struct Course {
 }
 
 impl Course {
-    /// A wall at a uniform temperature at clock 0, to be integrated with this tolerance of one step, K.
+    /// A wall at clock 0, at a uniform temperature or where its own start profile has it, to be integrated with this tolerance of one step, K.
     pub fn new(station: &Station, surroundings: &Surroundings, grid: &Grid, start: Kelvin, step_tolerance: f64) -> Self {
         let wall = Wall::new([(station, surroundings)], grid);
         let integrator = Integrator::new(wall.unknowns_at([start]), wall.followers_at([start]));
-        Self {
+        let mut course = Self {
             station: station.name.clone(),
             wall,
             integrator,
             settings: Settings::with_tolerance(step_tolerance),
             clock: 0.0,
+        };
+        if station.start.is_some() {
+            let mut temperatures = course.wall.map(0).start_temperatures(station, start);
+            if let (Outside::Fixed(held), Some(last)) = (&station.outer.outside, temperatures.last_mut()) {
+                *last = *held;
+            }
+            course.place(0.0, &temperatures);
         }
+        course
     }
 
     /// The clock reached.
@@ -212,7 +228,7 @@ impl Moment<'_> {
         }
     }
 
-    /// Flux into the hot face, and out of the outer face per area of that face, at θ.
+    /// Flux into the hot face, and out of the outer face per area of that face (a bar: sides and far end, per section), at θ.
     pub fn fluxes(&self, theta: f64) -> (WattsPerSquareMetre, WattsPerSquareMetre) {
         let share = self.step.from + theta * (self.step.to - self.step.from);
         self.wall.face_fluxes(0, share, |node| self.step.value(node, theta)[0])

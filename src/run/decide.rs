@@ -1,8 +1,9 @@
 //! When the last phase has decided everything: where it leads, and whether anything can still change.
 
 use super::{Moment, Quantity, Watcher};
-use crate::model::{Convection, Kelvin, Outside, Place, Station, Surroundings};
+use crate::model::{Convection, FaceCourse, Kelvin, Losses, Outside, Place, Station, Surroundings};
 use crate::wall::{Equilibrium, Forcing, Over, equilibrium};
+use std::sync::Arc;
 
 /// A level that a wall at rest can't be told from, K: from above, nothing comes down to its own surroundings.
 pub const SAME: f64 = 1e-6;
@@ -29,6 +30,8 @@ pub struct LastPhase {
     wanted: Vec<usize>,
     /// The level of the spread, by index.
     evened: Option<usize>,
+    /// The followed face, if the hot end follows one, and what acts when it is at rest.
+    followed: Option<(Arc<FaceCourse>, Forcing)>,
     /// Peaks within this are decided, K.
     tolerance: f64,
     /// Whether peaks must be final.
@@ -58,6 +61,7 @@ impl LastPhase {
             rest: None,
             wanted,
             evened,
+            followed: station.followed().and_then(|followed| Some((followed.course.clone()?, *at_rest))),
             tolerance,
             peaks: true,
         }
@@ -92,30 +96,50 @@ impl LastPhase {
     }
 
     pub(super) fn decides(&mut self, watcher: &Watcher, moment: &Moment<'_>) -> bool {
-        if !self.peaks || !moment.segment.forcing.is_constant() {
+        if !self.peaks || !(moment.segment.forcing.is_constant() || self.followed.is_some()) {
             return false;
         }
         if self.rest.is_none() {
-            self.rest = Some(equilibrium(&mut moment.wall.clone(), moment.step.after));
+            let mut wall = moment.wall.clone();
+            self.rest = Some(match &self.followed {
+                Some((course, _)) if course.rest().is_none() => Equilibrium::None,
+                Some((_, at_rest)) => {
+                    wall.set_forcing([*at_rest]);
+                    equilibrium(&mut wall, moment.step.after)
+                }
+                None => equilibrium(&mut wall, moment.step.after),
+            });
         }
+        let outlook = self.followed.as_ref().map(|(course, _)| (course.to_come(moment.to), course.rest()));
         let temperatures = watcher.temperatures();
         let (low, high) = temperatures.iter().fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), value| {
             (low.min(*value), high.max(*value))
         });
         let (coolest_source, hottest_source) = self.sources.unwrap_or((f64::INFINITY, f64::NEG_INFINITY));
-        let ceiling = high.max(hottest_source);
-        let floor = low.min(coolest_source);
-        let from_rest = match &self.rest {
+        let mut ceiling = high.max(hottest_source);
+        let mut floor = low.min(coolest_source);
+        let mut from_rest = match &self.rest {
             Some(Equilibrium::At(rest)) => rest.iter().zip(temperatures).map(|(rest, now)| (rest - now).abs()).fold(0.0, f64::max),
             Some(Equilibrium::Isolated(rest)) => (high - rest).max(rest - low),
             _ => f64::INFINITY,
         };
+        // A followed face counts by all that it still does: a wall that only cools goes on doing so only while that face only falls (the same
+        // comparison as below, with a forcing that falls).
+        let mut falls = true;
+        if let Some((outlook, rest)) = outlook {
+            ceiling = ceiling.max(outlook.hottest);
+            floor = floor.min(outlook.coolest);
+            falls = outlook.only_falls;
+            let rest = rest.unwrap_or(f64::INFINITY);
+            from_rest = from_rest.max((outlook.hottest - rest).abs()).max((outlook.coolest - rest).abs());
+        }
         // Heat conduction with losses that rise with temperature is cooperative: once no node warms, none ever will again under the same
         // surroundings (Smith, Monotone Dynamical Systems, 1995, Prop. 3.2.1). A node at rest may warm by less than a tenth of the tolerance
         // until the clock has doubled.
         let since = (moment.to - watcher.last_burn_end()).max(1.0);
         let calm = 0.1 * self.tolerance / since;
-        let only_cools = (0..temperatures.len()).all(|node| moment.warming(node) <= calm)
+        let only_cools = falls
+            && (0..temperatures.len()).all(|node| moment.warming(node) <= calm)
             && (0..moment.map().probes.len()).all(|probe| moment.reading(probe, 1.0) >= moment.truth(probe, 1.0) - self.tolerance);
         let peaks_final = only_cools
             || from_rest < self.tolerance
@@ -168,7 +192,8 @@ impl LastPhase {
         let crossed = watcher.crossings()[evened].last_down.map_or(watcher.last_burn_end(), |down| down.0);
         let origin = watcher.last_burn_end();
         let settling = moment.wall.resistance(0) * moment.wall.capacity(0);
-        let settled = only_cools && moment.to - origin >= 2.0 * (crossed - origin) && moment.to - crossed >= settling;
+        let settled =
+            only_cools && moment.segment.forcing.is_constant() && moment.to - origin >= 2.0 * (crossed - origin) && moment.to - crossed >= settling;
         ceiling - floor <= level.value || resting_spread + 2.0 * from_rest <= level.value || settled
     }
 
@@ -199,6 +224,12 @@ fn resting(quantity: Quantity, map: &crate::wall::NodeMap, temperatures: &[Kelvi
 /// Coolest and hottest temperature of what acts on the wall at rest; `None` where nothing does.
 fn sources(station: &Station, surroundings: &Surroundings, at_rest: &Forcing) -> Option<(Kelvin, Kelvin)> {
     let mut sources = Vec::new();
+    if at_rest.film.end > 0.0 || at_rest.gas_emissivity.end > 0.0 {
+        sources.push(at_rest.gas.end);
+    }
+    if at_rest.flux.end > 0.0 {
+        sources.push(f64::INFINITY);
+    }
     if at_rest.idle_coefficient > 0.0 {
         sources.push(at_rest.idle_temperature);
     }
@@ -212,19 +243,25 @@ fn sources(station: &Station, surroundings: &Surroundings, at_rest: &Forcing) ->
         (Outside::Fixed(temperature), _) => sources.push(*temperature),
         (Outside::Adiabatic, _) => {}
         (Outside::Open(_), Over::Coolant { temperature, .. }) => sources.push(temperature),
-        (Outside::Open(losses), Over::Losses) => {
-            if losses.convection != Convection::None {
-                sources.push(surroundings.air);
-            }
-            if losses.emissivity.is_some() {
-                sources.push(surroundings.surfaces);
-            }
-            if losses.solar_absorptivity * surroundings.sun > 0.0 {
-                sources.push(f64::INFINITY);
-            }
-        }
+        (Outside::Open(losses), Over::Losses) => loss_sources(losses, surroundings, &mut sources),
+    }
+    for side in &station.sides {
+        loss_sources(side, surroundings, &mut sources);
     }
     let low = sources.iter().copied().reduce(f64::min)?;
     let high = sources.iter().copied().reduce(f64::max)?;
     Some((low, high))
+}
+
+/// What acts by the losses of a face.
+fn loss_sources(losses: &Losses, surroundings: &Surroundings, sources: &mut Vec<Kelvin>) {
+    if losses.convection != Convection::None {
+        sources.push(surroundings.air);
+    }
+    if losses.emissivity.is_some() {
+        sources.push(surroundings.surfaces);
+    }
+    if losses.solar_absorptivity * surroundings.sun > 0.0 {
+        sources.push(f64::INFINITY);
+    }
 }

@@ -16,7 +16,7 @@ pub struct Row {
     pub probes: Vec<(Kelvin, Kelvin)>,
     /// Into the hot face.
     pub flux_in: WattsPerSquareMetre,
-    /// Out of the outer face, per its area.
+    /// Out of the outer face, per its area; of a bar out of its sides and far end, per section at the heated end.
     pub flux_out: WattsPerSquareMetre,
 }
 

@@ -106,7 +106,10 @@ impl<'a> Timeline<'a> {
     pub fn at_rest(model: &'a Model, station: &'a Station) -> Option<Forcing> {
         let phase = model.profile.phases().last()?;
         let timeline = Self::starting(model, station, 0.0);
-        Some(timeline.forcing(phase, 0.0, 1.0, Gas::default(), Gas::default(), false))
+        match timeline.followed_gas(f64::INFINITY) {
+            Some(gas) => Some(timeline.forcing(phase, 0.0, 1.0, gas, gas, true)),
+            None => Some(timeline.forcing(phase, 0.0, 1.0, Gas::default(), Gas::default(), false)),
+        }
     }
 
     /// Adds the last phase once more, from the end of the written profile to a clock.
@@ -123,9 +126,26 @@ impl<'a> Timeline<'a> {
             first.starts_phase = before == 0;
             first.jump = before == 0;
         }
-        if let Some(last) = added.last_mut() {
+        if self.station.followed().is_some() {
+            // What a followed face still does is known: the run may end before it is at rest.
+            for segment in added {
+                segment.open_ended = true;
+            }
+        } else if let Some(last) = added.last_mut() {
             last.open_ended = true;
         }
+    }
+
+    /// What a followed face does at a clock, burn or not; `None`: the hot end follows none.
+    fn followed_gas(&self, clock: Seconds) -> Option<Gas> {
+        let followed = self.station.followed()?;
+        let factor = self.station.heating.as_ref().map_or(1.0, |heating| heating.factor);
+        let temperature = followed.course.as_ref().map_or(self.model.start, |course| course.at(clock));
+        Some(Gas {
+            film: factor * followed.conductance,
+            temperature,
+            ..Gas::default()
+        })
     }
 
     fn phase(&mut self, phase: &Phase, duration: Seconds) {
@@ -173,6 +193,7 @@ impl<'a> Timeline<'a> {
 
     fn end_burn_at(&mut self, phase: &Phase, start: Seconds, end: Seconds, scale: f64) {
         self.afterglow = match self.station.heating.as_ref().map(|heating| &heating.model) {
+            Some(HeatingModel::Wall(_)) => None,
             Some(HeatingModel::Log(_)) => Some(Afterglow::Log { origin: start }),
             Some(_) if phase.tail > 0.0 => Some(Afterglow::Tail {
                 start: end,
@@ -186,6 +207,9 @@ impl<'a> Timeline<'a> {
     /// Clocks at which something bends or jumps, from the start of a phase on.
     fn kinks(&self, phase: &Phase, start: Seconds) -> Vec<Seconds> {
         let Some(heating) = &self.station.heating else { return Vec::new() };
+        if let Some(course) = self.station.followed().and_then(|followed| followed.course.as_ref()) {
+            return course.clocks().collect();
+        }
         let rows = |origin: Seconds| -> Vec<Seconds> {
             match &heating.model {
                 HeatingModel::Log(LogRows::Flux { rows, .. }) => rows.iter().map(|row| origin + row.0).collect(),
@@ -211,6 +235,9 @@ impl<'a> Timeline<'a> {
         let Some(heating) = &self.station.heating else {
             return (Gas::default(), false);
         };
+        if let Some(gas) = self.followed_gas(clock) {
+            return (gas, true);
+        }
         let burning = phase.kind() == PhaseKind::Burn;
         let (scale, tail_share) = if burning {
             let full = phase.scale();
@@ -249,6 +276,7 @@ impl<'a> Timeline<'a> {
                 };
                 (gas, false)
             }
+            HeatingModel::Wall(_) => (Gas::default(), true),
             HeatingModel::Flux(flux) => (
                 Gas {
                     flux: factor * scale * flux,

@@ -98,6 +98,11 @@ fn strongest_flux(model: &Model, station: &Station) -> WattsPerSquareMetre {
             gas_temperature,
         } => scale * coefficient * (gas_temperature - model.start).abs(),
         HeatingModel::Flux(flux) => scale * flux.abs(),
+        HeatingModel::Wall(followed) => followed.course.as_ref().map_or(0.0, |course| {
+            let outlook = course.to_come(0.0);
+            let most = (outlook.hottest - model.start).abs().max((outlook.coolest - model.start).abs());
+            followed.conductance * most
+        }),
         HeatingModel::Log(LogRows::Flux { rows, .. }) => rows.iter().map(|row| row.1.abs()).fold(0.0, f64::max),
         HeatingModel::Log(LogRows::Film { rows }) => rows.iter().map(|row| row.1 * (row.2 - model.start).abs()).fold(0.0, f64::max),
     };
@@ -121,7 +126,11 @@ fn outer_jump(model: &Model, station: &Station, through_the_wall: WattsPerSquare
             Jump::Temperature
         };
     };
-    let at_start = outside_losses(losses, &model.surroundings, None, model.start).0.abs();
+    let face = station
+        .start
+        .as_ref()
+        .and_then(|start| start.layers().last()?.last().map(|point| point.1));
+    let at_start = outside_losses(losses, &model.surroundings, None, face.unwrap_or(model.start)).0.abs();
     let coolant = losses.coolant.as_ref().map_or(0.0, |coolant| {
         through_the_wall + coolant.coefficient * (model.start - coolant.temperature).abs()
     });

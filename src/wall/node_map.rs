@@ -1,7 +1,7 @@
 //! Which node lies where: depths, layers, joints, probes.
 
 use super::Grid;
-use crate::model::{Metres, Place, Station};
+use crate::model::{Kelvin, Metres, Place, Station};
 use std::ops::RangeInclusive;
 
 /// Which node lies where in one station. A perfect joint shares one node; a joint with a resistance has one on each side.
@@ -43,6 +43,25 @@ impl NodeMap {
             .map(|probe| weights(&depths, &layers[probe.layer], probe.depth))
             .collect();
         Self { layers, depths, probes }
+    }
+
+    /// Node temperatures of a station at time 0: its own profile, read by cubics through its points as probes are, or the same everywhere.
+    pub fn start_temperatures(&self, station: &Station, uniform: Kelvin) -> Vec<Kelvin> {
+        let mut temperatures = vec![uniform; self.len()];
+        let Some(start) = &station.start else { return temperatures };
+        for (nodes, points) in self.layers.iter().zip(start.layers()) {
+            let distances: Vec<Metres> = points.iter().map(|point| point.0).collect();
+            let (whole, hot_side) = (distances.last().copied().unwrap_or(0.0), self.depths[*nodes.start()]);
+            for node in nodes.clone() {
+                let distance = (self.depths[node] - hot_side).clamp(0.0, whole);
+                let read = weights(&distances, &(0..=distances.len() - 1), distance);
+                temperatures[node] = (0..4)
+                    .filter(|k| read.weights[*k] != 0.0)
+                    .map(|k| read.weights[k] * points[read.first + k].1)
+                    .sum();
+            }
+        }
+        temperatures
     }
 
     /// Number of nodes.

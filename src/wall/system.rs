@@ -14,7 +14,7 @@ use std::ops::RangeInclusive;
 pub enum Ledger {
     /// Heat that came in over the hot face, J/m².
     Inward,
-    /// Heat that left over the outer face, J/m² of hot face.
+    /// Heat that left over the outer face, and over the sides of a bar, J/m² of hot face.
     Outward,
 }
 
@@ -45,6 +45,15 @@ enum Crossing {
     Gap { gap: Gap, area: f64, width: f64, exchange: f64 },
 }
 
+/// A node's share of the side of a bar, in one layer.
+#[derive(Clone, Debug)]
+struct SideFace<const L: usize> {
+    node: usize,
+    layer: usize,
+    /// Per hot-face area.
+    area: Slot<L>,
+}
+
 /// What one member's faces exchange heat with.
 #[derive(Clone, Debug)]
 struct Faces {
@@ -55,6 +64,12 @@ struct Faces {
     natural: Option<TabulatedCoefficient>,
     /// Outer area per hot-face area.
     outer_area: f64,
+    /// Area that a shown flux out of the wall is divided by: the outer face, of a bar its section at the heated end.
+    shown_area: f64,
+    /// What the sides lose, layer by layer; empty except in a bar.
+    sides: Vec<Losses>,
+    /// Their convection as tables, where that is smooth.
+    side_natural: Vec<Option<TabulatedCoefficient>>,
 }
 
 /// A lagging probe, as a follower.
@@ -79,6 +94,8 @@ pub struct Wall<const L: usize> {
     /// Which entry of `curved` a node belongs to.
     curve_of: Vec<Option<usize>>,
     joints: Vec<JointFace<L>>,
+    /// Empty where there are no sides: planes and cylinders pay nothing for them.
+    sides: Vec<SideFace<L>>,
     faces: [Faces; L],
     held: bool,
     maps: [NodeMap; L],
@@ -100,6 +117,9 @@ pub struct Wall<const L: usize> {
     /// Its derivative by the node before and by the node itself.
     flux_by_before: Vec<Slot<L>>,
     flux_by_own: Vec<Slot<L>>,
+    /// Flux out of the side of each node, and its derivative by the node; empty without sides.
+    side_flux: Vec<Slot<L>>,
+    side_by_own: Vec<Slot<L>>,
 }
 
 impl<const L: usize> Wall<L> {
@@ -160,10 +180,22 @@ impl<const L: usize> Wall<L> {
                 surroundings: surroundings.clone(),
                 idle_emissivity: station.idle.emissivity.clone(),
                 outside: station.outer.outside.clone(),
-                natural: tabulated(&station.outer.outside, surroundings),
-                outer_area: station.shape.area_ratio(station.outer_distance()),
+                natural: match &station.outer.outside {
+                    Outside::Open(losses) => tabulated(losses, surroundings),
+                    Outside::Fixed(_) | Outside::Adiabatic => None,
+                },
+                outer_area: station.outer_area(),
+                shown_area: if station.shape == Shape::Bar { 1.0 } else { station.outer_area() },
+                side_natural: station.sides.iter().map(|losses| tabulated(losses, surroundings)).collect(),
+                sides: station.sides.clone(),
             }
         });
+        let sides = if station.sides.is_empty() {
+            Vec::new()
+        } else {
+            side_faces(members.map(|member| member.0), grid, &maps[0], held)
+        };
+        let side_len = if sides.is_empty() { 0 } else { len };
         let mut lagging = Vec::new();
         let mut follower_of_probe = Vec::new();
         for (index, probe) in station.probes.iter().enumerate() {
@@ -201,6 +233,7 @@ impl<const L: usize> Wall<L> {
             curved,
             curve_of,
             joints,
+            sides,
             faces,
             held,
             maps,
@@ -218,6 +251,8 @@ impl<const L: usize> Wall<L> {
             flux: edges.clone(),
             flux_by_before: edges.clone(),
             flux_by_own: edges,
+            side_flux: vec![[0.0; L]; side_len],
+            side_by_own: vec![[0.0; L]; side_len],
         }
     }
 
@@ -313,7 +348,8 @@ impl<const L: usize> Wall<L> {
             .sum()
     }
 
-    /// Flux into the hot face, and out of the outer face per area of that face, W/m², in a state at a share of the stretch.
+    /// Flux into the hot face, and out of the outer face per area of that face (of a bar: out of its sides and far end, per section at the heated
+    /// end), W/m², in a state at a share of the stretch.
     pub fn face_fluxes(&self, member: usize, share: f64, unknown: impl Fn(usize) -> f64) -> (WattsPerSquareMetre, WattsPerSquareMetre) {
         let last = self.curve_of.len() - 1;
         let inward = self.hot_flux(member, share, self.temperature(0, member, unknown(0))).0;
@@ -322,7 +358,25 @@ impl<const L: usize> Wall<L> {
         } else {
             self.outer_flux(member, self.temperature(last, member, unknown(last))).0
         };
-        (inward, outward / self.faces[member].outer_area)
+        let sides: f64 = self
+            .sides
+            .iter()
+            .map(|side| self.side_flux(side, member, self.temperature(side.node, member, unknown(side.node))).0)
+            .sum();
+        (inward, (outward + sides) / self.faces[member].shown_area)
+    }
+
+    /// Heat out of a node's side at its temperature, per hot-face area.
+    #[inline]
+    fn side_flux(&self, side: &SideFace<L>, member: usize, temperature: Kelvin) -> FluxAndSlope {
+        let faces = &self.faces[member];
+        let (flux, slope) = outside_losses(
+            &faces.sides[side.layer],
+            &faces.surroundings,
+            faces.side_natural[side.layer].as_ref(),
+            temperature,
+        );
+        (flux * side.area[member], slope * side.area[member])
     }
 
     /// Heat that crosses from a node to the next, per hot-face area.
@@ -337,13 +391,17 @@ impl<const L: usize> Wall<L> {
         self.conductance[node][member] * (point(node, unknown).1 - point(node + 1, next).0)
     }
 
-    /// Whether neither face's exchange depends on its temperature, at the end of the stretch: nothing can balance a flux.
+    /// Whether no face's and no side's exchange depends on its temperature, at the end of the stretch: nothing can balance a flux.
     pub fn answers_nothing(&self, unknowns: &[Slot<L>]) -> bool {
         let last = self.curve_of.len() - 1;
         !self.held
             && (0..L).all(|l| {
                 self.hot_flux(l, 1.0, self.temperature(0, l, unknowns[0][l])).1 == 0.0
                     && self.outer_flux(l, self.temperature(last, l, unknowns[last][l])).1 == 0.0
+                    && self
+                        .sides
+                        .iter()
+                        .all(|side| self.side_flux(side, l, self.temperature(side.node, l, unknowns[side.node][l])).1 == 0.0)
             })
     }
 
@@ -458,6 +516,9 @@ impl<const L: usize> Wall<L> {
                 }
             }
         }
+        if !self.sides.is_empty() {
+            self.side_fluxes::<SLOPES>();
+        }
         for l in 0..L {
             let (inward, inward_slope) = self.hot_flux(l, share, self.temperature[0][l]);
             // What leaves over a held face is what the last pair of nodes conducts into it.
@@ -476,18 +537,42 @@ impl<const L: usize> Wall<L> {
         }
     }
 
+    /// Fluxes out of the sides of all nodes.
+    fn side_fluxes<const SLOPES: bool>(&mut self) {
+        self.side_flux.fill([0.0; L]);
+        if SLOPES {
+            self.side_by_own.fill([0.0; L]);
+        }
+        for index in 0..self.sides.len() {
+            let node = self.sides[index].node;
+            for l in 0..L {
+                let (flux, slope) = self.side_flux(&self.sides[index], l, self.temperature[node][l]);
+                self.side_flux[node][l] += flux;
+                if SLOPES {
+                    self.side_by_own[node][l] += slope * self.by_unknown[node][l];
+                }
+            }
+        }
+    }
+
     fn rates(&self, followers: &[Slot<L>], rate: &mut [Slot<L>], follower_rate: &mut [Slot<L>]) {
         let len = rate.len();
         // Lanes and nodes in one row: each node's flux from the hot side and, a node further, the flux it passes on.
         let flux = self.flux.as_flattened();
         let (received, passed_on) = (&flux[..len * L], &flux[L..(len + 1) * L]);
         let inverse = &self.inverse_capacity.as_flattened()[..len * L];
-        let rate = &mut rate.as_flattened_mut()[..len * L];
+        let flat_rate = &mut rate.as_flattened_mut()[..len * L];
         for i in 0..len * L {
-            rate[i] = (received[i] - passed_on[i]) * inverse[i];
+            flat_rate[i] = (received[i] - passed_on[i]) * inverse[i];
         }
         follower_rate[Ledger::Inward as usize] = self.flux[0];
         follower_rate[Ledger::Outward as usize] = self.flux[len];
+        for (node, side) in self.side_flux.iter().enumerate() {
+            for l in 0..L {
+                rate[node][l] -= side[l] * self.inverse_capacity[node][l];
+                follower_rate[Ledger::Outward as usize][l] += side[l];
+            }
+        }
         for (index, probe) in self.lagging.iter().enumerate() {
             for l in 0..L {
                 let read: f64 = (0..4)
@@ -540,6 +625,11 @@ impl<const L: usize> System<L> for Wall<L> {
             diagonal[i] = (by_own[i] - passed_by_own[i]) * inverse[i];
             upper[i] = -passed_by_next[i] * inverse[i];
         }
+        for (node, slope) in self.side_by_own.iter().enumerate() {
+            for l in 0..L {
+                jacobian.diagonal[node][l] -= slope[l] * self.inverse_capacity[node][l];
+            }
+        }
     }
 
     fn rate_of_time(&mut self, share: f64, unknowns: &[Slot<L>], rate: &mut [Slot<L>], follower_rate: &mut [Slot<L>]) -> bool {
@@ -575,6 +665,11 @@ impl<const L: usize> System<L> for Wall<L> {
                 self.flux_by_before[last + 1][l] * direction[last][l]
             };
         }
+        for (slope, direction) in self.side_by_own.iter().zip(direction) {
+            for l in 0..L {
+                out[Ledger::Outward as usize][l] += slope[l] * direction[l];
+            }
+        }
         for (index, probe) in self.lagging.iter().enumerate() {
             for l in 0..L {
                 let read: f64 = (0..4)
@@ -604,11 +699,11 @@ impl<const L: usize> System<L> for Wall<L> {
 impl Crossing {
     fn new(station: &Station, joint: usize) -> Self {
         let distance = station.distances()[joint] + station.layers[joint].thickness;
-        let area = station.shape.area_ratio(distance);
+        let area = station.joint_area(joint);
         match station.resistance(joint) {
             Some(Resistance::Gap(gap)) => {
                 let (width, ratio) = match station.shape {
-                    Shape::Plane => (gap.width, 1.0),
+                    Shape::Plane | Shape::Bar => (gap.width, 1.0),
                     Shape::Cylinder { inner_radius } => {
                         let inner = inner_radius + distance;
                         (inner * (1.0 + gap.width / inner).ln(), inner / (inner + gap.width))
@@ -651,8 +746,7 @@ fn radiated(face: Kelvin, surfaces: Kelvin) -> FluxAndSlope {
 }
 
 /// A table of a convection whose correlation is smooth; those with a change of régime are evaluated as they are.
-fn tabulated(outside: &Outside, surroundings: &Surroundings) -> Option<TabulatedCoefficient> {
-    let Outside::Open(losses) = outside else { return None };
+fn tabulated(losses: &Losses, surroundings: &Surroundings) -> Option<TabulatedCoefficient> {
     let smooth = matches!(
         losses.convection,
         Convection::Natural(NaturalSurface::Vertical(_) | NaturalSurface::HorizontalCylinder(_))
@@ -681,6 +775,26 @@ pub(super) fn outside_losses(losses: &Losses, surroundings: &Surroundings, natur
         slope += emissivity * lost_slope + change * lost;
     }
     (flux - losses.solar_absorptivity * surroundings.sun, slope)
+}
+
+/// Which node has how much of the side of which layer. What a held node loses is its holder's affair.
+fn side_faces<const L: usize>(stations: [&Station; L], grid: &Grid, map: &NodeMap, held: bool) -> Vec<SideFace<L>> {
+    let last = map.len() - 1;
+    let mut sides = Vec::new();
+    for (layer, nodes) in map.layers.iter().enumerate() {
+        let shares = &grid.layers()[layer];
+        for (index, node) in nodes.clone().enumerate().filter(|(_, node)| !(held && *node == last)) {
+            // From the middle of the cell before to the middle of the cell after.
+            let before = index.checked_sub(1).map_or(0.0, |before| 0.5 * (shares[index] - shares[before]));
+            let after = shares.get(index + 1).map_or(0.0, |after| 0.5 * (after - shares[index]));
+            sides.push(SideFace {
+                node,
+                layer,
+                area: std::array::from_fn(|l| stations[l].side_area(layer, (before + after) * stations[l].layers[layer].thickness)),
+            });
+        }
+    }
+    sides
 }
 
 /// Conductances and capacities of one member's nodes, per hot-face area.
@@ -712,11 +826,11 @@ impl Geometry {
             for (cell, pair) in distance.windows(2).enumerate() {
                 let node = start + cell;
                 let middle = 0.5 * (pair[0] + pair[1]);
-                let volumes = [station.shape.volume(pair[0], middle), station.shape.volume(middle, pair[1])];
+                let volumes = [station.volume(index, pair[0], middle), station.volume(index, middle, pair[1])];
                 capacity[node] += heat * volumes[0];
                 capacity[node + 1] += heat * volumes[1];
                 conductance[node] = match station.shape {
-                    Shape::Plane => conductivity / (pair[1] - pair[0]),
+                    Shape::Plane | Shape::Bar => conductivity * station.area_ratio(index, middle) / (pair[1] - pair[0]),
                     // Exact for steady flow: k/(r₀ ln(r₂/r₁)) per area of the hot face at r₀.
                     Shape::Cylinder { inner_radius } => conductivity / (inner_radius * ((pair[1] - pair[0]) / (inner_radius + pair[0])).ln_1p()),
                 };

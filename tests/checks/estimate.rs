@@ -1,7 +1,7 @@
 //! The estimate of the error is honest: what a run says it may be off bounds, to a factor of 3, what it is off on every closed form that is checked
 //! here.
 
-use super::{cylinder, fire, lumped, multilayer, nonlinear, semi_infinite, slab};
+use super::{bar, cylinder, fire, lumped, multilayer, nonlinear, semi_infinite, slab};
 use crate::walls::*;
 
 /// Rounding of the reference values and of the crossings, K.
@@ -17,6 +17,7 @@ fn the_true_error_is_at_most_three_times_the_estimate() -> Outcome {
         lumped::cases()?,
         nonlinear::cases()?,
         fire::cases()?,
+        bar::cases()?,
     ];
     let (mut compared, mut wrong) = (0, Vec::new());
     for case in topics.iter().flatten() {

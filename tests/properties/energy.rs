@@ -2,6 +2,7 @@
 
 use crate::walls::*;
 use soakdown::model::*;
+use uom::si::{area::square_meter, f64::Area};
 
 /// Conductivity and heat capacity against temperature.
 const STEEL: [[(f64, f64); 4]; 2] = [
@@ -61,6 +62,45 @@ fn in_minus_out_is_stored_to_rounding() -> Outcome {
                 assert!(energy.gross_outward >= energy.outward, "{energy:?}");
             }
         }
+    }
+    Ok(())
+}
+
+#[test]
+fn a_bar_counts_what_its_sides_lose_to_rounding() -> Outcome {
+    let steel = tabled(&STEEL[0], 7900.0, &STEEL[1])?;
+    let felt = tabled(&FELT[0], 128.0, &FELT[1])?;
+    let cross_section = |area: f64, perimeter: f64| CrossSection::new(Area::new::<square_meter>(area), metres(perimeter));
+    let natural = |diameter: f64| Convection::natural_horizontal_cylinder(metres(diameter));
+    for outer in [
+        outside(12.0, 0.8)?,
+        insulated(),
+        OuterFace::new(Outside::fixed(temperature(310.0))?, None),
+    ] {
+        let layers = vec![
+            layer("seat", &steel, 0.01)?.with_cross_section(cross_section(2e-4, 0.06)?),
+            layer("strut", &steel, 0.03)?
+                .with_cross_section(cross_section(5e-5, 0.03)?)
+                .with_joint(contact(3000.0)?),
+            layer("pad", &felt, 0.003)?.with_cross_section(cross_section(1e-4, 0.05)?),
+        ];
+        let bar = Wall {
+            shape: Shape::Bar,
+            heating: film(2500.0, 1800.0)?,
+            idle: Idle::new(coefficient(5.0), temperature(320.0), pure(0.7), 0.3)?,
+            outer,
+            sides: vec![
+                Losses::new(natural(0.06)?, Some(pure(0.8)))?,
+                Losses::new(natural(0.03)?, Some(pure(0.3)))?,
+                Losses::new(Convection::coefficient(coefficient(7.0))?, None)?,
+            ],
+            phases: phases()?,
+            ..Wall::of(layers)?
+        };
+        let (answers, trace) = history(&bar.model()?, &[5.0, 20.0])?;
+        let energy = &answers.stations[0].energy;
+        assert!(energy.imbalance < 1e-9, "{energy:?}");
+        assert!(energy.outward > 1e4 && trace.iter().all(|row| row.flux_out > 0.0), "{energy:?}");
     }
     Ok(())
 }

@@ -5,6 +5,7 @@ use soakdown::model::*;
 use soakdown::run::{Segment, Timeline};
 use soakdown::solve::{Flow, Integrator, Settings};
 use soakdown::wall::{Grid, Wall as Walls};
+use uom::si::{area::square_meter, f64::Area};
 
 const STARTS: [f64; 8] = [300.0, 280.0, 310.0, 350.0, 300.0, 295.0, 400.0, 320.0];
 const STEP_TOLERANCE: f64 = 0.005;
@@ -118,5 +119,48 @@ fn eight_equal_members_are_one_wall_eight_times() -> Outcome {
             }
         }
     }
+    Ok(())
+}
+
+/// The same members as lengths of bars, with sides that differ too.
+fn bar_member(index: usize) -> Result<Model, ModelError> {
+    let share = index as f64 / 7.0;
+    let cross_section = |area: f64| CrossSection::new(Area::new::<square_meter>(area), metres(0.04 + 0.02 * share));
+    Wall {
+        shape: Shape::Bar,
+        heating: film(300.0 + 500.0 * share, 1500.0 - 400.0 * share)?,
+        outer: outside(8.0, 0.5)?,
+        sides: vec![
+            Losses::new(
+                Convection::natural_horizontal_cylinder(metres(0.013 + 0.006 * share))?,
+                Some(pure(0.2 + 0.6 * share)),
+            )?,
+            Losses::new(Convection::coefficient(coefficient(5.0 + 20.0 * share))?, None)?,
+        ],
+        start: STARTS[index],
+        phases: vec![burn(30.0 + 20.0 * share)?, shutdown(400.0)?],
+        ..Wall::of(vec![
+            layer("strut", &material(15.0 + 10.0 * share, 7900.0, 500.0)?, 0.04)?.with_cross_section(cross_section(1e-4)?),
+            layer("foot", &material(120.0, 2700.0, 900.0)?, 0.02)?.with_cross_section(cross_section(5e-5 + 2e-5 * share)?),
+        ])?
+    }
+    .model()
+}
+
+#[test]
+fn eight_bars_side_by_side_end_each_phase_where_each_ends_alone() -> Outcome {
+    let models = (0..8).map(bar_member).collect::<Result<Vec<_>, _>>()?;
+    let grid = Grid::new(&models[0], &models[0].stations()[0], 1.0);
+    let together = through(std::array::from_fn::<&Model, 8, _>(|l| &models[l]), STARTS, &grid)?;
+    for l in 0..8 {
+        let alone = through([&models[l]], [STARTS[l]], &grid)?;
+        for (together, alone) in together.iter().zip(&alone) {
+            for (side_by_side, single) in together[l].iter().zip(&alone[0]) {
+                assert!((side_by_side - single).abs() < PROMISE, "member {l}: {side_by_side}, alone {single}");
+            }
+        }
+    }
+    let far = |l: usize| together[0][l][20];
+    assert!((far(0) - far(7)).abs() > 1.0);
     Ok(())
 }

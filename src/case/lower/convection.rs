@@ -103,9 +103,8 @@ impl Lowering<'_> {
         };
         if let (Some(Extent::FacingUp(_) | Extent::FacingDown(_)), Some(_)) = (natural, forced) {
             let text = format!(
-                "{}: \"mixed\" on a face that looks up or down takes the one \"length\" both as its area over its perimeter and as its run along the wind; the \
-                 larger of the two is on the side of longer waits",
-                section.name
+                "\"mixed\" on a face that looks up or down takes the one \"length\" both as its area over its perimeter and as its run along the wind; the \
+                 larger of the two is on the side of longer waits"
             );
             self.findings.notice("one-length-for-two", text, Some(section.name), None);
         }

@@ -13,11 +13,17 @@ use crate::units::Kind;
 impl Lowering<'_> {
     pub(super) fn idle(&mut self, section: &Section<'_>) -> Option<Idle> {
         let heating = section.table.table("heating");
+        if heating.and_then(|heating| heating.text("model")) == Some("wall") {
+            self.without_effect(
+                section.table,
+                &["idle"],
+                "with heating model \"wall\": the hot end follows the other wall at all times",
+            );
+            return Some(Idle::never());
+        }
         let Some(node) = section.table.node("idle") else {
-            if heating.and_then(|heating| heating.text("model")) != Some("wall") {
-                let expect = crate::case::keys::STATION.key("idle").map_or(&Expect::Free, |key| &key.expect);
-                self.findings.at(section.spot, missing("idle", expect, "[[station]]"));
-            }
+            let expect = crate::case::keys::STATION.key("idle").map_or(&Expect::Free, |key| &key.expect);
+            self.findings.at(section.spot, missing("idle", expect, "[[station]]"));
             return None;
         };
         let table = node.table()?;

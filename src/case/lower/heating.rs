@@ -35,6 +35,9 @@ impl Lowering<'_> {
         for (model, keys) in OF_MODEL.into_iter().filter(|of| of.0 != word) {
             self.misfits(table, keys, &format!("with model \"{word}\": it belongs to \"{model}\""));
         }
+        if word == "wall" {
+            return self.following(section, table, node).map(Some);
+        }
         let later = self.later_heating(table, word);
         let path = section.path_of("heating");
         let factor = self.number_or(Some(table), "factor", &path, 1.0, Kind::Number);
@@ -59,7 +62,7 @@ impl Lowering<'_> {
     /// Reports what is not built yet; whether there was anything.
     fn later_heating(&mut self, table: &Table, word: &str) -> bool {
         let before = self.findings.diagnostics.list.len();
-        if let ("bartz" | "wall", Some(model)) = (word, table.node("model")) {
+        if let ("bartz", Some(model)) = (word, table.node("model")) {
             self.not_built_yet(&model.words(), &format!("the heating model \"{word}\""));
         }
         for (key, what) in [("soot_resistance", "a carbon deposit"), ("film_effectiveness", "film cooling")] {

@@ -3,7 +3,9 @@
 
 mod convection;
 mod coolant;
+mod csv_file;
 mod faces;
+mod follow;
 mod heating;
 mod heating_log;
 mod joint;
@@ -15,6 +17,7 @@ mod outside;
 mod probe;
 mod profile;
 pub(super) mod quantities;
+mod start;
 mod station;
 mod surroundings;
 mod view;
@@ -55,10 +58,14 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<(Model, O
     let title = lowering.title(case);
     let weather = lowering.weather(case);
     let start = lowering.start(case, weather.air);
-    let mut materials = Materials::new(case, start.unwrap_or(quantities::ROOM));
+    let mut materials = Materials::new(case, start.temperature.unwrap_or(quantities::ROOM));
     let profile = lowering.profile(case);
-    let stations = lowering.stations(case, &weather, profile.as_ref(), &mut materials);
+    let mut stations = lowering.stations(case, &weather, profile.as_ref(), &mut materials);
+    if let Some(earlier) = &start.earlier {
+        lowering.start_from(case, earlier, &mut stations);
+    }
     lowering.wind(case);
+    lowering.followed_stations(case);
     let waits = lowering.waits(case, &stations);
     let allowance = lowering.allowance(case);
     let tolerance = lowering.tolerance(case);
@@ -67,7 +74,7 @@ pub(super) fn lower(root: &Node, mut lowering: Lowering<'_>) -> Option<(Model, O
     let parts = ModelParts {
         title,
         surroundings: weather.surroundings?,
-        start: quantities::temperature(start?),
+        start: quantities::temperature(start.temperature?),
         profile: profile?.profile,
         stations: stations.into_iter().map(|station| station.model).collect::<Option<_>>()?,
         waits: waits?,
@@ -99,7 +106,7 @@ impl Lowering<'_> {
             Some(due) => found.help(format!("for \"{key}\", {due}")),
             None => found,
         };
-        self.findings.at(spot, found);
+        self.findings.at(&self.findings.head(spot), found);
     }
 
     /// Keys that mean nothing here.

@@ -1,7 +1,11 @@
 //! SI numbers to `uom` quantities, for the model's constructors.
 
-use uom::si::f64::{HeatFluxDensity, HeatTransfer, Length, MassDensity, Pressure, TemperatureInterval, ThermodynamicTemperature, Time, Velocity};
-use uom::si::{heat_flux_density, heat_transfer, length, mass_density, pressure, temperature_interval, thermodynamic_temperature, time, velocity};
+use uom::si::f64::{
+    Area, HeatFluxDensity, HeatTransfer, Length, MassDensity, Pressure, TemperatureInterval, ThermodynamicTemperature, Time, Velocity,
+};
+use uom::si::{
+    area, heat_flux_density, heat_transfer, length, mass_density, pressure, temperature_interval, thermodynamic_temperature, time, velocity,
+};
 
 /// Stands in where the start temperature could not be read; only mistakes come of such a case, no model. K.
 pub(super) const ROOM: f64 = 293.15;
@@ -32,6 +36,10 @@ pub(in crate::case) fn flux(watts_per_square_metre: f64) -> HeatFluxDensity {
 
 pub(in crate::case) fn transfer(watts_per_square_metre_kelvin: f64) -> HeatTransfer {
     HeatTransfer::new::<heat_transfer::watt_per_square_meter_kelvin>(watts_per_square_metre_kelvin)
+}
+
+pub(super) fn area(square_metres: f64) -> Area {
+    Area::new::<area::square_meter>(square_metres)
 }
 
 pub(in crate::case) fn velocity(metres_per_second: f64) -> Velocity {

@@ -1,8 +1,9 @@
 //! [[station]]: one wall section.
 
 use super::joint::JointPlace;
-use super::layers::LoweredLayer;
+use super::layers::{LoweredLayer, StationOfLayer};
 use super::material::Materials;
+use super::outside::LoweredOutside;
 use super::probe::ProbePlace;
 use super::profile::LoweredProfile;
 use super::quantities::length;
@@ -47,6 +48,9 @@ impl Section<'_> {
 
     /// Outer diameter of a cylinder, its gaps included, m; breadth of a bar at its far end.
     pub fn outer_diameter(&self) -> Option<f64> {
+        if self.word == "bar" {
+            return breadth(self.layers.last()?);
+        }
         let gap = |layer: &LoweredLayer| match layer.layer.as_ref().and_then(|layer| layer.joint.as_ref()?.resistance.as_ref()) {
             Some(Resistance::Gap(gap)) => gap.width,
             _ => 0.0,
@@ -58,6 +62,11 @@ impl Section<'_> {
     pub fn path_of(&self, key: &str) -> String {
         names::join(&self.path, key)
     }
+}
+
+/// Breadth of a length of a bar for correlations, m: its perimeter over π, the diameter if it is round.
+pub(super) fn breadth(layer: &LoweredLayer) -> Option<f64> {
+    Some(layer.perimeter? / std::f64::consts::PI)
 }
 
 impl Lowering<'_> {
@@ -107,7 +116,7 @@ impl Lowering<'_> {
             .list("layers")
             .unwrap_or_default()
             .iter()
-            .map(|layer| self.layer(layer, &name, &layers_path, materials))
+            .map(|layer| self.layer(layer, StationOfLayer { name: &name, table }, &layers_path, materials))
             .collect();
         self.joints(table, &mut layers, &layers_path, materials.start);
         let complete = layers.iter().all(Option::is_some);
@@ -157,18 +166,22 @@ impl Lowering<'_> {
         section: &Section<'_>,
         heating: Option<Option<crate::model::Heating>>,
         idle: Option<crate::model::Idle>,
-        outer: Option<crate::model::OuterFace>,
+        outer: Option<LoweredOutside>,
         probes: Option<Vec<ProbePlace>>,
     ) -> Option<Station> {
+        let outer = outer?;
         let values = StationValues {
             name: section.name.to_owned(),
             shape: section.shape?,
             layers: section.layers.iter().map(|layer| layer.layer.clone()).collect::<Option<_>>()?,
             heating: heating?,
             idle: idle?,
-            outer: outer?,
+            outer: outer.face,
         };
-        let station = self.accept(Station::new(values), section.spot)?;
+        let mut station = self.accept(Station::new(values), section.spot)?;
+        if let Some(sides) = outer.sides {
+            station = self.accept(station.with_sides(sides), section.spot)?;
+        }
         probes?.into_iter().try_fold(station, |station, probe| {
             let station = station.with_probe(probe.name, length(probe.depth), probe.layer, super::quantities::time(probe.lag));
             self.accept(station, &probe.spot)
@@ -209,17 +222,17 @@ impl Lowering<'_> {
     }
 
     fn shape(&mut self, node: &Node, table: &Table, word: &str) -> Option<Shape> {
-        if word == "bar" {
-            if let Some(shape) = table.node("shape") {
-                self.not_built_yet(&shape.words(), "the shape \"bar\"");
-            }
-            return None;
+        if word != "bar" {
+            self.misfits(table, &["section", "perimeter"], "except in a bar");
         }
-        self.misfits(table, &["section", "perimeter"], "except in a bar");
         let heating = table.table("heating").and_then(|heating| heating.text("model"));
         // Area ratio, side and position are for Bartz's equation and for coupled cases; no heating model that is built reads them.
         if heating != Some("bartz") {
             self.without_effect(table, &["area_ratio", "side", "position"], "with this heating model");
+        }
+        if word == "bar" {
+            self.misfits(table, &["inner_diameter"], "on a bar");
+            return Some(Shape::Bar);
         }
         if word == "plane" {
             self.misfits(table, &["inner_diameter"], "on a plane");

@@ -1,4 +1,4 @@
-//! [surroundings] and [start].
+//! [surroundings].
 
 use super::quantities::{flux, pressure, temperature, velocity};
 use super::{Lowering, Spot, Table};
@@ -45,32 +45,6 @@ impl Lowering<'_> {
             vacuum: absolute == Some(0.0),
             sun: sun.is_some_and(|sun| sun > 0.0),
             wind: wind.filter(|_| table.is_some_and(|table| table.has("wind"))),
-        }
-    }
-
-    /// Start temperature, K.
-    pub(super) fn start(&mut self, case: &Table, air: Option<f64>) -> Option<f64> {
-        let table = case.table("start");
-        if let Some(table) = table {
-            self.exclude(table, &["temperature", "from"]);
-            match table.node("from") {
-                Some(node) => {
-                    self.not_built_yet(&node.spot, "starting from an earlier run");
-                    if !table.has("at") {
-                        self.missing(&node.spot, "at", "with \"from\": at which of that file's times this run starts");
-                    }
-                    return air;
-                }
-                None => self.misfits(table, &["at"], "without \"from\""),
-            }
-        }
-        match table.and_then(|table| table.node("temperature")) {
-            Some(node) => node.number(),
-            None => {
-                let air = air?;
-                self.default_number("start.temperature".to_owned(), air, Kind::Temperature);
-                Some(air)
-            }
         }
     }
 
