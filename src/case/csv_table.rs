@@ -58,7 +58,7 @@ impl CsvTable {
     pub fn is_even(&self, row: &CsvRow, findings: &mut Findings) -> bool {
         let (fields, columns) = (row.fields.len(), self.header.fields.len());
         if fields != columns {
-            let message = format!("this row has {fields} values, and the file has {columns} columns");
+            let message = format!("this row has {fields} values, and there are {columns} columns");
             findings.at(&row.spot, Diagnostic::error("uneven-row", message));
         }
         fields == columns

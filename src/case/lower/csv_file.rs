@@ -4,7 +4,7 @@ use super::{CaseFile, Lowering, Node};
 use crate::case::csv_table::CsvTable;
 
 impl Lowering<'_> {
-    /// Reads a CSV file that the case names; `due` says which columns are due first.
+    /// Reads the file that a text of the case names; `due`: the column that comes first.
     pub(super) fn read_csv(&mut self, file: &Node, due: &str) -> Option<CsvTable> {
         let written = file.text()?;
         let path = self.folder.join(written);
@@ -34,17 +34,13 @@ impl Lowering<'_> {
             self.files.push(used);
         }
         let source = self.findings.add_source(path.display().to_string(), text.clone());
-        self.parse_csv(source, &text, due)
-    }
-
-    fn parse_csv(&mut self, source: usize, text: &str, due: &str) -> Option<CsvTable> {
-        let log = CsvTable::parse(source, text, due, self.findings)?;
-        for (index, column) in log.header.fields.iter().enumerate() {
-            if log.header.fields[..index].contains(column) {
-                self.error(&log.header.spot, "repeated-name", format!("the column \"{column}\" stands twice"), "");
+        let table = CsvTable::parse(source, &text, due, self.findings)?;
+        for (index, column) in table.header.fields.iter().enumerate() {
+            if table.header.fields[..index].contains(column) {
+                self.error(&table.header.spot, "repeated-name", format!("the column \"{column}\" stands twice"), "");
                 return None;
             }
         }
-        Some(log)
+        Some(table)
     }
 }

@@ -62,7 +62,7 @@ impl Lowering<'_> {
             return None;
         };
         let asked = at.number()?;
-        let file = self.read_csv(from, "station")?;
+        let file = self.read_csv(from, COLUMNS[0])?;
         let rows = self.profile_rows(&file)?;
         let here = |time: f64| (time - asked).abs() <= SAME * asked.abs().max(1e-3);
         let mut stations: Vec<(String, Vec<(Metres, Kelvin)>)> = Vec::new();
@@ -112,7 +112,7 @@ impl Lowering<'_> {
         for row in &file.rows {
             let mut numbers = [0.0; 3];
             for (number, k) in numbers.iter_mut().zip(1..4) {
-                let field = row.fields.get(indices[k]).map_or("", String::as_str);
+                let field = row.field(indices[k]);
                 match field.parse::<f64>() {
                     Ok(value) if value.is_finite() && (k < 3 || value > 0.0) => *number = value,
                     _ => {
@@ -123,7 +123,7 @@ impl Lowering<'_> {
                     }
                 }
             }
-            let name = row.fields.get(indices[0]).cloned().unwrap_or_default();
+            let name = row.field(indices[0]).to_owned();
             rows.push((name, numbers[0], numbers[1], numbers[2]));
         }
         sound.then_some(rows)
