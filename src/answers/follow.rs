@@ -11,7 +11,7 @@ use std::sync::atomic::AtomicBool;
 
 /// The straight lines of a face's course leave its curve by no more than this, twice: once between the points read off a step, and once where points
 /// are left out.
-const STRAIGHT: KelvinDifference = 0.001;
+const STRAIGHT: KelvinDifference = 0.004;
 /// A wall this near to its rest is there.
 const AT_REST: KelvinDifference = 5e-4;
 
