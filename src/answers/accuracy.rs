@@ -15,6 +15,8 @@ const LOOSER: f64 = 3.0;
 const MOST_ROUNDS: usize = 6;
 /// An estimate that stays above this share of the one before was not moved by a finer grid.
 const UNMOVED: f64 = 0.8;
+/// No estimate is below this share of what a step may err by.
+const LEAST_SHARE: f64 = 0.1;
 /// Then a step may err by this share of what it might before.
 const SMALLER_STEPS: f64 = 0.2;
 /// Most walls keep the promise with a grid this fine.
@@ -70,7 +72,8 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         };
         let pass = Pass::of_profile(model, station_index, &grid, &fine, &keep)?;
         let second = Pass::of_profile(model, station_index, &grid.halved(), &coarse, &keep)?;
-        let estimated_error = difference(&pass, &second) / RICHARDSON;
+        // Two solutions may agree by chance; inside a step neither is better than this.
+        let estimated_error = (difference(&pass, &second) / RICHARDSON).max(LEAST_SHARE * step_tolerance);
         round += 1;
         let excess = (estimated_error / wanted).max(evening_difference(&pass, &second) / RICHARDSON / EVENING_SHARE);
         if excess <= 1.0 || round == MOST_ROUNDS {

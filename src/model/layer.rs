@@ -216,8 +216,8 @@ pub enum LimitKind {
 /// Whose limit it is.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum LimitOrigin {
-    /// Written in the case.
+    /// Written in the case, at the place or at a material of its own.
     Case,
-    /// The material's, from a material of the case or the library: no design margin.
+    /// The built-in material's: no design margin.
     Library,
 }

@@ -145,12 +145,12 @@ impl Lowering<'_> {
     }
 
     fn tell_library_limit(&mut self, station: &str, layer: &str, material: &str, limit: &Limit, built_in: bool) {
-        let whose = if built_in {
-            "from the library, common practice and no design margin"
+        let (code, whose) = if built_in {
+            ("library-limit", "from the library, common practice and no design margin")
         } else {
-            "the material's own in this case"
+            ("material-limit", "the material's own in this case")
         };
         let text = format!("{layer}: no limit given; {} taken for {material}, {whose}", spoken(limit.temperature));
-        self.findings.notice("library-limit", text, Some(station), Some(layer));
+        self.findings.notice(code, text, Some(station), Some(layer));
     }
 }

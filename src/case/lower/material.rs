@@ -167,8 +167,10 @@ impl Lowering<'_> {
             Some(node) => Some(self.emissivity(node)?),
             None => None,
         };
+        let built_in_limit = own_table.is_none_or(|table| !table.has("limit"));
+        let origin = if built_in_limit { LimitOrigin::Library } else { LimitOrigin::Case };
         let limit = match pick("limit") {
-            Some(node) => Some(self.limit(node, LimitOrigin::Library)?),
+            Some(node) => Some(self.limit(node, origin)?),
             None => None,
         };
         let optional = |key: &str| match pick(key) {
@@ -188,7 +190,7 @@ impl Lowering<'_> {
             material: Arc::new(material),
             emissivity,
             limit,
-            built_in_limit: own_table.is_none_or(|table| !table.has("limit")),
+            built_in_limit,
         })
     }
 
