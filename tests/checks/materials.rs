@@ -7,6 +7,9 @@ use soakdown::case::{material_card, material_cards};
 use std::collections::BTreeMap;
 use std::path::Path;
 
+/// Where a source itself holds the last value: beyond the card's table, the same.
+const HELD: [(&str, &str); 1] = [("carbon-steel", "conductivity")];
+
 /// Materials whose source gives fewer than three temperatures.
 const FEWER: [(&str, usize); 6] = [
     ("cork-phenolic", 2),
@@ -31,7 +34,8 @@ fn every_card_has_the_values_of_its_source() -> Outcome {
             ("heat capacity", &card.heat_capacity, heat_capacity),
         ] {
             let found = table.value(kelvin);
-            let inside = table.range().is_none_or(|(from, to)| (from - 1e-9..=to + 1e-9).contains(&kelvin));
+            let inside =
+                HELD.contains(&(name.as_str(), property)) || table.range().is_none_or(|(from, to)| (from - 1e-9..=to + 1e-9).contains(&kelvin));
             if (found / expected - 1.0).abs() > 2e-3 || !inside {
                 wrong.push(format!(
                     "{name}, {property} at {kelvin} K: {found}, and {expected} in {source}; inside the table: {inside}"

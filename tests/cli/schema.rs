@@ -16,15 +16,22 @@ const UNSEEN_CODES: &[(&str, &str)] = &[
         "excluded",
         "keys exclude each other: the table of keys says what may stand, the rules between keys stand in lowering",
     ),
+    ("follows-itself", "names are compared with each other"),
     ("joint-on-outermost", "the place in a list decides"),
     ("key-does-not-fit", "another key decides"),
     ("missing-column", "another file lacks something"),
     ("not-built-yet", "the schema knows the whole format, this version can't compute all of it"),
     ("not-rising", "values are compared with each other"),
+    ("orientation-does-not-fit", "another key decides"),
+    ("other-layers", "another file has others"),
+    ("other-thickness", "another file has another"),
     ("outside-wall", "values are added up"),
+    ("perimeter-too-small", "values are compared with each other"),
     ("phase-kind", "keys exclude each other"),
     ("repeated-name", "names are compared with each other"),
     ("shutdown-not-last", "the place in a list decides"),
+    ("station-not-in-file", "another file lacks something"),
+    ("time-not-in-file", "another file lacks something"),
     ("too-many-phases", "values are multiplied"),
     ("unknown-layer", "a name given elsewhere"),
     ("unknown-material", "a name given elsewhere, or built in"),
@@ -34,13 +41,18 @@ const UNSEEN_CODES: &[(&str, &str)] = &[
     ("unknown-profile", "a name built in, or a path"),
     ("unknown-value", "a name given in another file"),
     ("vacuum", "another key decides"),
+    ("wind-missing", "another key decides"),
     ("wind-unused", "another key decides"),
 ];
 
 /// The same for single cases, whose codes a schema sees elsewhere.
 const UNSEEN_CASES: &[(&str, &str)] = &[
+    ("bar-without-convection", "required because of another key"),
+    ("bar-without-perimeter", "required because of another key"),
     ("below-absolute-zero", "the size of a value with a unit"),
+    ("facing-up-without-length", "required because of another key"),
     ("far-too-large", "the size of a value with a unit"),
+    ("forced-plate-without-length", "required because of another key"),
     ("gap-without-gas", "required because of another key"),
     ("heating-log-with-words", "the mistake is in another file"),
     ("material-without-density", "required because no built-in material has this name"),
@@ -52,8 +64,11 @@ const UNSEEN_CASES: &[(&str, &str)] = &[
     ("profile-value-without-unit", "the unit that is due depends on the profile"),
     ("spread-of-a-profile-value-in-another-unit", "the unit that is due depends on a path"),
     ("spread-without-sigmas", "required because of another key"),
+    ("start-from-words", "the mistake is in another file"),
+    ("start-without-time", "required because of another key"),
     ("touch-longer-than-the-table", "the size of a value with a unit"),
     ("variant-in-another-unit", "the unit that is due depends on a path"),
+    ("wall-without-conductance", "required because of another key"),
 ];
 
 /// The text is no TOML: the editor's parser sees that, and there is nothing to hold against a schema.

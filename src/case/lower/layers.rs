@@ -97,7 +97,10 @@ impl Lowering<'_> {
         for (slot, key) in given.iter_mut().zip(["section", "perimeter"]) {
             match given_or(table, station, key) {
                 Some(node) => *slot = node.number().map(|number| (number, node)),
-                None => self.missing(&node.spot, key, "for a bar: on the station, or in each of its layers"),
+                None => {
+                    let named = table.node("name").map_or_else(|| node.spot.clone(), Node::words);
+                    self.missing(&named, key, "for a bar: on the station, or in each of its layers");
+                }
             }
         }
         let [Some((section, _)), Some((perimeter, words))] = given else {
