@@ -17,6 +17,10 @@ const MOST_ROUNDS: usize = 6;
 const UNMOVED: f64 = 0.8;
 /// Then a step may err by this share of what it might before.
 const SMALLER_STEPS: f64 = 0.2;
+/// Most walls keep the promise with a grid this fine.
+const FIRST_FINENESS: f64 = 1.5;
+/// The time to the evening out must be right to this share: a spread that hardly falls says little in kelvin.
+const EVENING_SHARE: f64 = 0.005;
 /// Halving a grid multiplies its error by four: the difference is three times what is left.
 const RICHARDSON: f64 = 3.0;
 /// Most phases of a profile in which the two solutions are compared, at either end.
@@ -53,7 +57,7 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         .map_or(0.0, |course| course.error());
     let wanted = WANTED_SHARE * (model.tolerance - inherited).max(0.1 * model.tolerance);
     let mut step_tolerance = STEP_SHARE * model.tolerance;
-    let mut fineness = 1.0;
+    let mut fineness = FIRST_FINENESS;
     let mut before = f64::INFINITY;
     let mut round = 0;
     loop {
@@ -68,7 +72,8 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
         let second = Pass::of_profile(model, station_index, &grid.halved(), &coarse, &keep)?;
         let estimated_error = difference(&pass, &second) / RICHARDSON;
         round += 1;
-        if estimated_error <= wanted || round == MOST_ROUNDS {
+        let excess = (estimated_error / wanted).max(evening_difference(&pass, &second) / RICHARDSON / EVENING_SHARE);
+        if excess <= 1.0 || round == MOST_ROUNDS {
             return Ok(Resolved {
                 grid,
                 pass,
@@ -76,13 +81,13 @@ pub fn resolve(model: &Model, station_index: usize, settings: &PassSettings<'_>)
                 step_tolerance,
             });
         }
-        if estimated_error > UNMOVED * before {
+        if excess > UNMOVED * before {
             // A finer grid did not help: the steps are to blame.
             step_tolerance *= SMALLER_STEPS;
         } else {
-            fineness *= (1.1 * (estimated_error / wanted).sqrt()).clamp(1.2, 2.5);
+            fineness *= (1.1 * excess.sqrt()).clamp(1.2, 2.5);
         }
-        before = estimated_error;
+        before = excess;
     }
 }
 
@@ -140,4 +145,17 @@ fn difference(pass: &Pass, second: &Pass) -> KelvinDifference {
         }
     }
     largest
+}
+
+/// The difference of two solutions in the time to the evening out, as a share of it.
+fn evening_difference(pass: &Pass, second: &Pass) -> f64 {
+    let at = |pass: &Pass| {
+        pass.crossings(LevelOf::Even)
+            .and_then(|(_, _, crossings)| crossings.last_down)
+            .map(|down| down.0)
+    };
+    match (at(pass), at(second)) {
+        (Some(a), Some(b)) if a > pass.watcher.last_burn_end() => (a - b).abs() / (a - pass.watcher.last_burn_end()),
+        _ => 0.0,
+    }
 }

@@ -11,7 +11,7 @@ use std::sync::atomic::AtomicBool;
 
 /// The straight lines of a face's course leave its curve by no more than this, twice: once between the points read off a step, and once where points
 /// are left out.
-const STRAIGHT: KelvinDifference = 0.001;
+const STRAIGHT: KelvinDifference = 0.004;
 /// A wall this near to its rest is there.
 const AT_REST: KelvinDifference = 5e-4;
 
@@ -95,14 +95,11 @@ pub(super) fn informed<'a, 'r>(
     Ok(Cow::Owned(model.with_face_course(index, course)))
 }
 
+/// Rows of a face's course, and where it comes to rest.
+type Rows = (Vec<(Seconds, Kelvin)>, Option<Kelvin>);
+
 /// How a face of a station goes, until its wall is at rest or 100 h are over, and where it then stays.
-fn face_course(
-    model: &Model,
-    index: usize,
-    face: FollowedFace,
-    on: &Resolved,
-    stop: Option<&AtomicBool>,
-) -> Result<(Vec<(Seconds, Kelvin)>, Option<Kelvin>), RunError> {
+fn face_course(model: &Model, index: usize, face: FollowedFace, on: &Resolved, stop: Option<&AtomicBool>) -> Result<Rows, RunError> {
     let station = &model.stations[index];
     let mut course = Course::new(station, &model.surroundings, &on.grid, model.start, on.step_tolerance);
     let node = match face {

@@ -14,7 +14,7 @@ pub struct Case {
     pub files: Vec<CaseFile>,
     /// What will be run.
     pub model: Model,
-    /// How a test's log is read, if [fit] says so.
+    /// How a test's log is read, if \[fit\] says so.
     pub log_format: Option<LogFormat>,
     /// Every input with where it comes from: the case's own, defaults taken, and library values used.
     pub inputs: Vec<Input>,

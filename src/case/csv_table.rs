@@ -40,7 +40,7 @@ impl CsvTable {
             }
         }
         if rows.len() < 2 {
-            let found = Diagnostic::error("empty-list", "the log has no rows");
+            let found = Diagnostic::error("empty-list", "the file has no rows");
             let label = format!("a line of column names is due ({due}, …), then at least one row");
             findings.at(&line_at(source, text, 0), found.label(label));
             return None;
@@ -58,7 +58,7 @@ impl CsvTable {
     pub fn is_even(&self, row: &CsvRow, findings: &mut Findings) -> bool {
         let (fields, columns) = (row.fields.len(), self.header.fields.len());
         if fields != columns {
-            let message = format!("this row has {fields} values, and the log has {columns} columns");
+            let message = format!("this row has {fields} values, and there are {columns} columns");
             findings.at(&row.spot, Diagnostic::error("uneven-row", message));
         }
         fields == columns

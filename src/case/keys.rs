@@ -244,6 +244,37 @@ pub(super) static CASE: Section = Section {
     ],
 };
 
+/// What is due at a key of this name, in words, where all sections that know it agree; only for plain values.
+pub(super) fn due_everywhere(name: &str) -> Option<String> {
+    fn search(expect: &Expect, name: &str, found: &mut Vec<String>) {
+        match expect {
+            Expect::Section(section) | Expect::Sections(section) | Expect::Named(section) => {
+                for key in section.keys {
+                    if key.name == name {
+                        found.push(match key.expect {
+                            Expect::Quantity(..) | Expect::Number(_) | Expect::Word(_) => super::form::due(&key.expect),
+                            _ => String::new(),
+                        });
+                    }
+                    // Phases hold phases.
+                    if !matches!(&key.expect, Expect::Sections(inner) if std::ptr::eq(*inner, &PHASE)) {
+                        search(&key.expect, name, found);
+                    }
+                }
+            }
+            Expect::OneOf(choices) => choices.iter().for_each(|choice| search(choice, name, found)),
+            _ => {}
+        }
+    }
+    let mut found = Vec::new();
+    search(&Expect::Section(&CASE), name, &mut found);
+    found.dedup();
+    match found.as_slice() {
+        [due] if !due.is_empty() => Some(due.clone()),
+        _ => None,
+    }
+}
+
 /// What is expected of one member of each list of tables.
 pub(super) static MEMBERS: &[Expect] = &[
     Expect::Section(&PHASE),

@@ -151,7 +151,11 @@ fn walk(node: Option<&Node>, expect: &'static Expect, segments: &[Segment], step
                 Some(index) => next(Step::Item(index), items.get(index), section_of(expect, section)),
                 None => Err(unknown(
                     segment,
-                    &format!("no {} is called \"{}\"", section.title, segment.name),
+                    &format!(
+                        "no {} is called \"{}\"",
+                        section.title.trim_start_matches("an ").trim_start_matches("a "),
+                        segment.name
+                    ),
                     names.iter().map(String::as_str),
                 )),
             }

@@ -53,7 +53,7 @@ pub(super) fn apply(root: &mut Node, setting: &str, findings: &mut Findings) {
 pub(super) fn path_mistake(error: PathError) -> Diagnostic {
     let mut found = Diagnostic::error("unknown-path", error.message).label("this path names nothing in the case");
     found.help.extend(error.help);
-    found
+    found.help("soakdown check CASE lists every input with its path")
 }
 
 /// The = sign that ends the path: the first one outside quotes.

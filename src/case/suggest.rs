@@ -24,18 +24,40 @@ pub(super) fn did_you_mean(name: &str) -> String {
     format!("did you mean \"{name}\"?")
 }
 
-/// `did you mean "…"?`, or the list of what is known where that is short.
+/// `did you mean "…"?`, or what holds the word, or the list of what is known where that is short.
 pub(super) fn help<'a>(written: &str, known: impl IntoIterator<Item = &'a str>) -> Option<String> {
     let known: Vec<_> = known.into_iter().collect();
     if let Some(name) = nearest(written, known.iter().copied()) {
         return Some(did_you_mean(name));
+    }
+    let wanted = written.trim().to_lowercase();
+    let parts: Vec<_> = known
+        .iter()
+        .copied()
+        .filter(|name| wanted.len() > 2 && name.to_lowercase().contains(&wanted))
+        .collect();
+    if !parts.is_empty() {
+        return Some(format!("known here with \"{wanted}\" in the name: {}", parts.join(", ")));
     }
     (!known.is_empty()).then(|| format!("known here: {}", known.join(", ")))
 }
 
 #[cfg(test)]
 mod tests {
-    use super::nearest;
+    use super::{help, nearest};
+
+    #[test]
+    fn a_word_that_is_part_of_names_leads_to_them() {
+        let known = ["carbon-steel", "ceramic-fibre-felt", "copper"];
+        assert_eq!(
+            help("Felt", known).as_deref(),
+            Some("known here with \"felt\" in the name: ceramic-fibre-felt")
+        );
+        assert_eq!(
+            help("rubber", known).as_deref(),
+            Some("known here: carbon-steel, ceramic-fibre-felt, copper")
+        );
+    }
 
     #[test]
     fn a_guess_is_made_only_where_it_is_worth_something() {

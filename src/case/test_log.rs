@@ -16,7 +16,7 @@ const LATEST: Seconds = 360_000.0;
 /// What loggers write where there is no reading.
 const NO_READING: [&str; 5] = ["", "nan", "n/a", "na", "-"];
 
-/// Reads the log of a test as the case's [fit] says; the file's digest and what is left out of the comparison go to the case.
+/// Reads the log of a test as the case's \[fit\] says; the file's digest and what is left out of the comparison go to the case.
 ///
 /// # Errors
 /// With every mistake in the log, at its line; or when the case doesn't say how to read it.

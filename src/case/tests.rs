@@ -382,6 +382,122 @@ fn a_gap_takes_its_layers_emissivities() -> Outcome {
     Ok(())
 }
 
+const BAR: &str = r#"
+soakdown = 1
+title = "Strut"
+[surroundings]
+air = "20 degC"
+wind = "2 m/s"
+sun = "800 W/m2"
+[profile]
+phases = [ { burn = "2 s" } ]
+[[station]]
+shape = "bar"
+section = "120 mm2"
+perimeter = "44 mm"
+layers = [
+  { name = "rod", material = "stainless-304", thickness = "40 mm", surface = "oxidised" },
+  { name = "foot", material = "mine", thickness = "10 mm", section = "400 mm2", perimeter = "80 mm" },
+]
+[station.heating]
+model = "film"
+coefficient = "1 kW/m2/K"
+gas_temperature = "1500 K"
+[station.idle]
+coefficient = "5 W/m2/K"
+[station.outside]
+convection = "mixed"
+solar_absorptivity = 0.5
+emissivity = 0.9
+[material.mine]
+density = "2000 kg/m3"
+heat_capacity = "900 J/kg/K"
+conductivity = "2 W/m/K"
+emissivity = 0.25
+"#;
+
+#[test]
+fn the_sides_of_a_bar_lose_by_their_own_breadth_and_emissivity() -> Outcome {
+    use crate::model::{Convection, ForcedSurface, NaturalSurface, Outside, Shape};
+    let case = accepted(BAR, &[])?;
+    let station = &case.model.stations()[0];
+    assert_eq!(station.shape, Shape::Bar);
+    assert_eq!(case.model.surroundings().wind, 2.0);
+    let close = |found: f64, expected: f64| (found - expected).abs() < 1e-9 * expected;
+    assert!(close(station.area_ratio(1, 0.0), 400.0 / 120.0) && close(station.side_area(1, 0.01), 0.08 * 0.01 / 120e-6));
+    for (side, perimeter) in station.sides.iter().zip([0.044, 0.080]) {
+        let breadth = perimeter / std::f64::consts::PI;
+        let Convection::Mixed {
+            natural: NaturalSurface::HorizontalCylinder(natural),
+            forced: ForcedSurface::AcrossCylinder(forced),
+        } = side.convection
+        else {
+            return Err(format!("{:?}", side.convection).into());
+        };
+        assert!(close(natural, breadth) && close(forced, breadth), "{natural} {forced} for {breadth}");
+        // Broadside to the sun a round bar catches 1/π of its side.
+        assert!(close(side.solar_absorptivity, 0.5 / std::f64::consts::PI));
+    }
+    let emissivity = |table: &Option<crate::model::Table>| table.as_ref().map(|table| table.value(300.0));
+    assert_eq!(emissivity(&station.sides[1].emissivity), Some(0.25));
+    let oxidised = emissivity(&station.sides[0].emissivity).ok_or("none")?;
+    let bare = accepted(BAR, &["station.wall.layers.rod.surface=bare"])?;
+    assert!(emissivity(&bare.model.stations()[0].sides[0].emissivity).is_some_and(|bare| bare < oxidised));
+    let Outside::Open(far_end) = &station.outer.outside else {
+        return Err("no far end".into());
+    };
+    assert_eq!((emissivity(&far_end.emissivity), far_end.solar_absorptivity), (Some(0.9), 0.5));
+    // A held far end leaves the sides as they are.
+    let held = accepted(&BAR.replace("emissivity = 0.9", "fixed = \"30 degC\""), &[])?;
+    assert!(matches!(held.model.stations()[0].outer.outside, Outside::Fixed(_)));
+    assert_eq!(held.model.stations()[0].sides, station.sides);
+    // A vertical one takes its height.
+    let vertical = accepted(
+        &BAR.replace("\"mixed\"", "\"natural\"\norientation = \"vertical\"\nlength = \"50 mm\"")
+            .replace("wind = \"2 m/s\"", ""),
+        &[],
+    )?;
+    assert_eq!(
+        vertical.model.stations()[0].sides[0].convection,
+        Convection::Natural(NaturalSurface::Vertical(0.05))
+    );
+    Ok(())
+}
+
+#[test]
+fn plates_and_cylinders_meet_the_wind_as_they_stand() -> Outcome {
+    use crate::model::{Convection, ForcedSurface, NaturalSurface, Outside};
+    let motion = |shape: &str, outside: &str| -> Result<Convection, Box<dyn std::error::Error>> {
+        let text = BAR
+            .replace("shape = \"bar\"\nsection = \"120 mm2\"\nperimeter = \"44 mm\"\n", shape)
+            .replace(", section = \"400 mm2\", perimeter = \"80 mm\"", "")
+            .replace("convection = \"mixed\"\n", outside)
+            .replace("coefficient = \"5 W/m2/K\"\n", "coefficient = \"5 W/m2/K\"\nview = 0.5\n");
+        match &accepted(&text, &[])?.model.stations()[0].outer.outside {
+            Outside::Open(losses) => Ok(losses.convection.clone()),
+            other => Err(format!("{other:?}").into()),
+        }
+    };
+    let plane = |outside: &str| motion("", outside);
+    let forced = "convection = \"forced\"\n";
+    let length = "length = \"300 mm\"\n";
+    assert_eq!(plane(&format!("{forced}{length}"))?, Convection::Forced(ForcedSurface::AlongPlate(0.3)));
+    assert_eq!(
+        plane(&format!("convection = \"mixed\"\norientation = \"facing-up\"\n{length}"))?,
+        Convection::Mixed {
+            natural: NaturalSurface::FacingUp(0.3),
+            forced: ForcedSurface::AlongPlate(0.3)
+        }
+    );
+    // 20 mm inside, 50 mm of layers on both sides.
+    let round = motion("shape = \"cylinder\"\ninner_diameter = \"20 mm\"\n", forced)?;
+    let Convection::Forced(ForcedSurface::AcrossCylinder(diameter)) = round else {
+        return Err(format!("{round:?}").into());
+    };
+    assert!((diameter - 0.120).abs() < 1e-12, "{diameter}");
+    Ok(())
+}
+
 #[test]
 fn losses_coolant_and_sun_reach_the_model() -> Outcome {
     let faces = format!(

@@ -9,6 +9,8 @@ use std::path::PathBuf;
 const ABOUT: &str = "Plans how long a rocket engine may burn, and how long people must wait afterwards";
 
 const AFTER_HELP: &str = "\
+The first hour: soakdown new my-wall, soakdown run my-wall.toml, then your own numbers in that file.
+
 Exit status:
   0    computed
   1    failed: a file can't be written, the solver gave up

@@ -14,7 +14,7 @@ use super::profiles::profiles;
 use super::run::run;
 use super::schema::schema;
 use clap::Parser;
-use clap::error::ErrorKind;
+use clap::error::{ContextKind, ContextValue, ErrorKind};
 use soakdown::report::Units;
 use std::ffi::OsString;
 
@@ -53,6 +53,11 @@ pub fn start(words: impl Iterator<Item = OsString>) -> ExitStatus {
 fn usage(told: &clap::Error) -> ExitStatus {
     // If the terminal is gone, the exit status still says it.
     let _unheard = told.print();
+    if let (ErrorKind::InvalidSubcommand, Some(ContextValue::String(word))) = (told.kind(), told.get(ContextKind::InvalidSubcommand))
+        && word.ends_with(".toml")
+    {
+        Printer::plain().mistake(&format!("a case stands after a command: soakdown run {word}"));
+    }
     match told.kind() {
         ErrorKind::DisplayHelp | ErrorKind::DisplayVersion => ExitStatus::Computed,
         _ => ExitStatus::Refused,

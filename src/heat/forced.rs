@@ -81,11 +81,11 @@ mod tests {
             (number(cylinder_across_nusselt, 1e2, 0.7), 5.156_131_72),
             (number(cylinder_across_nusselt, 1e4, 0.7), 53.327_788_7),
             (number(cylinder_across_nusselt, 1e5, 0.7), 214.126_043),
-            (number(cylinder_across_nusselt, 1e6, 7.0), 2909.921_23),
+            (number(cylinder_across_nusselt, 1e6, 7.0), 2_909.921_23),
             (number(plate_along_nusselt, 1e4, 0.7), 58.956_825_7),
             (number(plate_along_nusselt, 1e5, 0.7), 186.437_853),
             (number(plate_along_nusselt, 4e5, 0.7), 372.875_706),
-            (number(plate_along_nusselt, 1e6, 0.7), 1299.484_95),
+            (number(plate_along_nusselt, 1e6, 0.7), 1_299.484_95),
             (number(plate_along_nusselt, 1e7, 0.7), 12_305.430_8),
         ] {
             assert!((value / expected - 1.0).abs() < 1e-6, "{value} for {expected}");

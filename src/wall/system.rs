@@ -4,7 +4,8 @@ use super::curve::Share;
 use super::{Curve, Forcing, Grid, NodeMap, Over};
 use crate::heat::{TabulatedCoefficient, convected, gap_flux, grey_exchange};
 use crate::model::{
-    Convection, Gap, Kelvin, Losses, NaturalSurface, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table, WattsPerSquareMetre,
+    Convection, ForcedSurface, Gap, Kelvin, Losses, NaturalSurface, Outside, Resistance, STEFAN_BOLTZMANN, Shape, Station, Surroundings, Table,
+    WattsPerSquareMetre,
 };
 use crate::solve::{Slot, System, Tridiagonal};
 use std::ops::RangeInclusive;
@@ -747,10 +748,13 @@ fn radiated(face: Kelvin, surfaces: Kelvin) -> FluxAndSlope {
 
 /// A table of a convection whose correlation is smooth; those with a change of régime are evaluated as they are.
 fn tabulated(losses: &Losses, surroundings: &Surroundings) -> Option<TabulatedCoefficient> {
-    let smooth = matches!(
-        losses.convection,
-        Convection::Natural(NaturalSurface::Vertical(_) | NaturalSurface::HorizontalCylinder(_))
-    );
+    let smooth_rise = |natural: &NaturalSurface| matches!(natural, NaturalSurface::Vertical(_) | NaturalSurface::HorizontalCylinder(_));
+    let smooth = match &losses.convection {
+        Convection::Natural(natural) => smooth_rise(natural),
+        Convection::Forced(forced) => matches!(forced, ForcedSurface::AcrossCylinder(_)),
+        Convection::Mixed { natural, forced } => smooth_rise(natural) && matches!(forced, ForcedSurface::AcrossCylinder(_)),
+        Convection::None | Convection::Coefficient(_) => false,
+    };
     smooth.then(|| TabulatedCoefficient::new(surroundings.air, |face| convected(&losses.convection, surroundings, face)))
 }
 

@@ -24,7 +24,7 @@ fn wait(convection: &Convection, around: &Surroundings) -> f64 {
     let width = (330.0 - 450.0) / f64::from(steps);
     let slope = |step: f64| 1.0 / rate(450.0 + step * width);
     (0..steps)
-        .map(|step| f64::from(step))
+        .map(f64::from)
         .map(|step| width / 6.0 * (slope(step) + 4.0 * slope(step + 0.5) + slope(step + 1.0)))
         .sum()
 }

@@ -102,10 +102,8 @@ impl Lowering<'_> {
             _ => Some(self.forced(section, table, node)?),
         };
         if let (Some(Extent::FacingUp(_) | Extent::FacingDown(_)), Some(_)) = (natural, forced) {
-            let text = format!(
-                "\"mixed\" on a face that looks up or down takes the one \"length\" both as its area over its perimeter and as its run along the wind; the \
-                 larger of the two is on the side of longer waits"
-            );
+            let text = "\"mixed\" on a face that looks up or down takes the one \"length\" both as its area over its perimeter and as its run along the wind; the \
+                 larger of the two is on the side of longer waits";
             self.findings.notice("one-length-for-two", text, Some(section.name), None);
         }
         windy.then_some(AirMotion::Moving { natural, forced })
@@ -119,7 +117,6 @@ impl Lowering<'_> {
                 self.error(spot, "wind-missing", message, "give surroundings.wind, as in wind = \"3 m/s\"");
                 false
             }
-            #[expect(clippy::float_cmp, reason = "no wind is written as a plain zero")]
             Some(wind) if wind == 0.0 && word == "forced" => {
                 self.error(
                     spot,

@@ -2,7 +2,7 @@
 
 use super::quantities::{flux, temperature, time, transfer};
 use super::station::Section;
-use super::{CaseFile, Lowering, Node, Table};
+use super::{Lowering, Node, Table};
 use crate::case::csv_table::{CsvRow, CsvTable};
 use crate::case::suggest;
 use crate::diagnostics::Diagnostic;
@@ -20,7 +20,7 @@ impl Lowering<'_> {
             return None;
         };
         let net = table.switch("net").unwrap_or(false);
-        let log = self.read_log(file)?;
+        let log = self.read_csv(file, TIME)?;
         let has = |name: &str| log.column(name).is_some();
         for (index, column) in log.header.fields.iter().enumerate() {
             if ![TIME, FLUX, COEFFICIENT, GAS].contains(&column.as_str()) {
@@ -86,49 +86,6 @@ impl Lowering<'_> {
             );
             self.findings.notice("log-net", text, Some(section.name), None);
         }
-    }
-
-    fn read_log(&mut self, file: &Node) -> Option<CsvTable> {
-        let written = file.text()?;
-        let path = self.folder.join(written);
-        let bytes = match std::fs::read(&path) {
-            Ok(bytes) => bytes,
-            Err(error) => {
-                let message = format!("can't read {}: {error}", path.display());
-                self.error(&file.words(), "cannot-read", message, "paths count from the folder of the case file");
-                return None;
-            }
-        };
-        let digest = crate::case::digest::of(&[&bytes]);
-        let Ok(text) = String::from_utf8(bytes) else {
-            self.error(
-                &file.words(),
-                "not-text",
-                format!("{} is no UTF-8 text", path.display()),
-                "a CSV file is due",
-            );
-            return None;
-        };
-        let used = CaseFile {
-            path: written.to_owned(),
-            digest,
-        };
-        if !self.files.contains(&used) {
-            self.files.push(used);
-        }
-        let source = self.findings.add_source(path.display().to_string(), text.clone());
-        self.parse_log(source, &text)
-    }
-
-    fn parse_log(&mut self, source: usize, text: &str) -> Option<CsvTable> {
-        let log = CsvTable::parse(source, text, TIME, self.findings)?;
-        for (index, column) in log.header.fields.iter().enumerate() {
-            if log.header.fields[..index].contains(column) {
-                self.error(&log.header.spot, "repeated-name", format!("the column \"{column}\" stands twice"), "");
-                return None;
-            }
-        }
-        Some(log)
     }
 
     /// The numbers of some columns, row by row, the first one rising.

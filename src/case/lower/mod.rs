@@ -25,7 +25,9 @@ mod wait;
 
 use super::checked::{CaseFile, Input, InputValue, LogFormat};
 use super::findings::Findings;
+use super::keys;
 use super::keys::VERSION;
+use super::names;
 use super::suggest;
 use super::tree::{Node, Spot, Table, Value};
 use crate::diagnostics::Diagnostic;
@@ -99,12 +101,12 @@ impl Lowering<'_> {
 
     /// A key that is required here, because of something else.
     fn missing(&mut self, spot: &Spot, key: &str, why: &str) {
-        self.error(
-            &self.findings.head(spot),
-            "missing-key",
-            format!("the key \"{key}\" is missing"),
-            format!("\"{key}\" is required {why}"),
-        );
+        let found = Diagnostic::error("missing-key", format!("the key \"{key}\" is missing")).label(format!("\"{key}\" is required {why}"));
+        let found = match keys::due_everywhere(key) {
+            Some(due) => found.help(format!("for \"{key}\", {due}")),
+            None => found,
+        };
+        self.findings.at(&self.findings.head(spot), found);
     }
 
     /// Keys that mean nothing here.
@@ -141,6 +143,12 @@ impl Lowering<'_> {
         let name = node.text().unwrap_or_default();
         let mut found = Diagnostic::error(code, format!("{what} \"{name}\" is unknown"));
         found.help.extend(suggest::help(name, known));
+        if code == "unknown-material" {
+            found = found.help(format!(
+                "soakdown materials shows what is built in; one of your own is a section [material.{}]",
+                names::in_path(name)
+            ));
+        }
         self.findings.at(&node.words(), found);
     }
 

@@ -82,7 +82,12 @@ impl Lowering<'_> {
         if matches!(given.value, Value::Number(_)) && (depth < start - grace || depth > end + grace) {
             let what = layer.map_or("the wall", |_| "this layer");
             let message = format!("the probe lies outside {what}, which is {:.4} mm thick", 1e3 * (end - start));
-            self.error(&given.words(), "outside-wall", message, "a smaller depth is due");
+            self.error(
+                &given.words(),
+                "outside-wall",
+                message,
+                "a smaller depth is due; \"from_outside\" counts from the other side",
+            );
             return None;
         }
         Some(depth.clamp(start, end))

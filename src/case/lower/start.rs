@@ -1,9 +1,9 @@
 //! [start]: a uniform temperature, or where an earlier run stood.
 
-use super::csv_file::CsvFile;
 use super::quantities::{length, temperature};
 use super::station::LoweredStation;
 use super::{Lowering, Node, Spot, Table};
+use crate::case::csv_table::CsvTable;
 use crate::case::suggest;
 use crate::diagnostics::Diagnostic;
 use crate::model::{Kelvin, Metres, StartProfile, Station};
@@ -62,7 +62,7 @@ impl Lowering<'_> {
             return None;
         };
         let asked = at.number()?;
-        let file = self.read_csv(from)?;
+        let file = self.read_csv(from, COLUMNS[0])?;
         let rows = self.profile_rows(&file)?;
         let here = |time: f64| (time - asked).abs() <= SAME * asked.abs().max(1e-3);
         let mut stations: Vec<(String, Vec<(Metres, Kelvin)>)> = Vec::new();
@@ -96,13 +96,13 @@ impl Lowering<'_> {
     }
 
     /// Station, time, depth and temperature of each row.
-    fn profile_rows(&mut self, file: &CsvFile) -> Option<Vec<(String, f64, f64, f64)>> {
+    fn profile_rows(&mut self, file: &CsvTable) -> Option<Vec<(String, f64, f64, f64)>> {
         let mut indices = [0; 4];
         for (slot, name) in indices.iter_mut().zip(COLUMNS) {
-            let Some(index) = file.header.iter().position(|column| column == name) else {
+            let Some(index) = file.column(name) else {
                 let message = format!("the column \"{name}\" is missing");
                 let due = format!("the depths.csv of an earlier run is due: {}", COLUMNS.join(", "));
-                self.error(&file.header_spot, "missing-column", message, due);
+                self.error(&file.header.spot, "missing-column", message, due);
                 return None;
             };
             *slot = index;
@@ -112,18 +112,18 @@ impl Lowering<'_> {
         for row in &file.rows {
             let mut numbers = [0.0; 3];
             for (number, k) in numbers.iter_mut().zip(1..4) {
-                let field = row.fields.get(indices[k]).map_or("", String::as_str);
+                let field = row.field(indices[k]);
                 match field.parse::<f64>() {
                     Ok(value) if value.is_finite() && (k < 3 || value > 0.0) => *number = value,
                     _ => {
-                        let spot = self.field_spot(&row.spot, indices[k], field);
+                        let spot = row.field_spot(indices[k], self.findings);
                         let message = format!("\"{field}\" makes no sense in {}", COLUMNS[k]);
                         self.error(&spot, "bad-number", message, "a finite number is due, of a temperature one above 0 K");
                         sound = false;
                     }
                 }
             }
-            let name = row.fields.get(indices[0]).cloned().unwrap_or_default();
+            let name = row.field(indices[0]).to_owned();
             rows.push((name, numbers[0], numbers[1], numbers[2]));
         }
         sound.then_some(rows)
