@@ -172,7 +172,12 @@ fn the_listed_paths_can_be_set() -> Outcome {
             ["station.throat.idle.view", "profile.phases.3.shutdown"].contains(&input.path.as_str()) || input.path.starts_with("wait.touch");
         if !derived {
             let again = accepted(CHAMBER, &[&setting]).map_err(|error| format!("{setting}: {error}"))?;
-            assert_eq!(format!("{:?}", again.model), format!("{:?}", case.model), "{setting}");
+            // Whoever sets a built-in material's limit makes it the case's own, even to the same value.
+            let seen = |model: &crate::model::Model| match input.path.starts_with("material.") {
+                true => format!("{model:?}").replace("origin: Library", "origin: Case"),
+                false => format!("{model:?}"),
+            };
+            assert_eq!(seen(&again.model), seen(&case.model), "{setting}");
         }
     }
     Ok(())
