@@ -192,8 +192,8 @@ impl Watcher {
         }
         let extrema = self.extrema(moment);
         let before = std::mem::take(&mut self.values);
-        for node in 0..len {
-            self.temperatures[node] = moment.temperature(node, 1.0);
+        for (temperature, evaluated) in self.temperatures.iter_mut().zip(moment.wall.evaluated()) {
+            *temperature = evaluated[0];
         }
         self.values = self
             .quantities

@@ -309,6 +309,11 @@ impl<const L: usize> Wall<L> {
         }
     }
 
+    /// Temperatures of all nodes at the point of the last evaluation: for an observer of steps, at the end of its step.
+    pub fn evaluated(&self) -> &[Slot<L>] {
+        &self.temperature
+    }
+
     /// The unknown of a node at a temperature.
     pub fn unknown(&self, node: usize, member: usize, temperature: Kelvin) -> f64 {
         match self.curve_of[node] {
