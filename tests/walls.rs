@@ -1,8 +1,8 @@
 //! Walls built in code, for checks against closed forms: plain SI numbers in, models out.
 
-use soakdown::answers::{RunAnswers, RunOptions, TraceRow, WaitAnswer, WaitState, run};
+use soakdown::answers::{RunAnswers, RunOptions, WaitAnswer, WaitState, run};
 use soakdown::model::*;
-use soakdown::run::{Course, Recorder, Row, Timeline};
+use soakdown::run::{Course, Recorder, Timeline, TraceRow};
 use soakdown::solve::Flow;
 use soakdown::wall::{Grid, NodeMap};
 use std::sync::Arc;
@@ -396,7 +396,7 @@ pub fn from_state(
     step_tolerance: f64,
     times: &[f64],
     state: impl FnOnce(&NodeMap) -> Vec<f64>,
-) -> Result<Vec<Row>, Box<dyn std::error::Error>> {
+) -> Result<Vec<TraceRow>, Box<dyn std::error::Error>> {
     let station = &model.stations()[0];
     let grid = Grid::new(model, station, fineness);
     let mut course = Course::new(station, model.surroundings(), &grid, 300.0, step_tolerance);

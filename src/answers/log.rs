@@ -2,7 +2,7 @@
 
 use super::types::{ComparedReading, LogAnswer};
 use crate::model::{Readings, Seconds, Station};
-use crate::run::Row;
+use crate::run::TraceRow;
 
 /// Times of all readings at a station, rising.
 pub(super) fn reading_times(log: &[Readings], station: usize) -> Vec<Seconds> {
@@ -14,14 +14,14 @@ pub(super) fn reading_times(log: &[Readings], station: usize) -> Vec<Seconds> {
 }
 
 /// Every reading of a station beside the computed one; `rows`: the run at [`reading_times`].
-pub(super) fn compared(log: &[Readings], index: usize, station: &Station, rows: &[Row]) -> Vec<(LogAnswer, Vec<ComparedReading>)> {
+pub(super) fn compared(log: &[Readings], index: usize, station: &Station, rows: &[TraceRow]) -> Vec<(LogAnswer, Vec<ComparedReading>)> {
     let readings = log.iter().filter(|readings| readings.station == index);
     let compared = readings.map(|readings| {
         let points: Vec<ComparedReading> = readings
             .points
             .iter()
             .filter_map(|&(time, reading)| {
-                let row = rows.binary_search_by(|row| row.clock.total_cmp(&time)).ok().and_then(|at| rows.get(at))?;
+                let row = rows.binary_search_by(|row| row.time.total_cmp(&time)).ok().and_then(|at| rows.get(at))?;
                 Some(ComparedReading {
                     time,
                     reading,

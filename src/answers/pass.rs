@@ -1,7 +1,7 @@
 //! One station once through its segments, with everything watched that an answer asks for.
 
 use crate::model::{Kelvin, KelvinDifference, Limit, Metres, Model, Outside, Place, Seconds, Station, Table};
-use crate::run::{Course, Crossings, LastPhase, Level, Moment, Peak, Quantity, Recorder, Row, RunError, Segment, Timeline, Watcher};
+use crate::run::{Course, Crossings, LastPhase, Level, Moment, Peak, Quantity, Recorder, RunError, Segment, Timeline, TraceRow, Watcher};
 use crate::wall::{Grid, NodeMap};
 use std::sync::atomic::AtomicBool;
 
@@ -189,9 +189,9 @@ pub struct Pass {
     pub(super) plan: Plan,
     pub(super) watcher: Watcher,
     pub(super) map: NodeMap,
-    pub(super) rows: Vec<Row>,
+    pub(super) rows: Vec<TraceRow>,
     /// At the reading times.
-    pub(super) readings: Vec<Row>,
+    pub(super) readings: Vec<TraceRow>,
     pub(super) profiles: Vec<(Seconds, Vec<(Metres, Kelvin)>)>,
     /// Net heat in and out, and what the wall holds more than at the start, J per m² of hot face.
     pub(super) heat: [f64; 3],

@@ -7,7 +7,7 @@ use super::pass::{Keep, LevelOf, Pass, PassSettings, kept, limits};
 use super::steady::{Burn, steady};
 use super::types::*;
 use crate::model::{HeatingModel, Kelvin, Limit, Model, PhaseKind, Place, Readings, Seconds, Shape, Station};
-use crate::run::{Peak, Quantity, Rest, Row, RunError, SAME};
+use crate::run::{Peak, Quantity, Rest, RunError, SAME};
 use std::sync::atomic::AtomicBool;
 
 /// What to compute beside the answers.
@@ -501,17 +501,9 @@ fn profile_times(model: &Model, pass: &Pass, until: Seconds, asked: &[Seconds]) 
 }
 
 fn history(pass: Pass) -> StationHistory {
-    let trace = pass.rows.into_iter().map(|row: Row| TraceRow {
-        time: row.clock,
-        phase: row.kind,
-        faces: row.faces,
-        probes: row.probes,
-        flux_in: row.flux_in,
-        flux_out: row.flux_out,
-    });
     let depths = pass.profiles.into_iter().map(|(time, points)| DepthProfile { time, points });
     StationHistory {
-        trace: trace.collect(),
+        trace: pass.rows,
         depths: depths.collect(),
     }
 }

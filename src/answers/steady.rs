@@ -2,8 +2,8 @@
 
 use super::pass::{Keep, LevelOf, Pass, PassSettings, Plan, Stretch, limits};
 use super::types::{Steady, SteadyState};
-use crate::model::{HeatingModel, Kelvin, Model, Place, Seconds};
-use crate::run::{Course, LastPhase, Moment, Quantity, RunError, Timeline};
+use crate::model::{HeatingModel, Kelvin, Model, Seconds};
+use crate::run::{Course, LastPhase, Moment, RunError, Timeline};
 use crate::solve::bracketed_root;
 use crate::wall::{Equilibrium, Grid, equilibrium};
 
@@ -55,8 +55,9 @@ pub(super) fn steady(model: &Model, station_index: usize, grid: &Grid, settings:
     let from: Vec<Kelvin> = if burn.from.is_empty() { cold.clone() } else { burn.from.to_vec() };
     let mut arrived = (faces.iter().filter_map(|node| reached(*node, from[*node])).all(|share| share >= ARRIVED)).then_some(0.0);
     let keep = Keep::default();
+    let plan = Plan::new(model, station_index, settings.off_limits);
     let stretch = |segments, from, last_phase| Stretch {
-        plan: Plan::new(model, station_index, settings.off_limits),
+        plan: plan.clone(),
         origin: burn.start,
         last_phase,
         segments,
@@ -82,15 +83,13 @@ pub(super) fn steady(model: &Model, station_index: usize, grid: &Grid, settings:
             }
         },
     )?;
-    let within = |pass: &Pass| pass.keeps_limits(station);
     let rest_within = limits(station).iter().all(|(place, limit)| {
         let hottest = rest[way.map.nodes(*place)].iter().copied().fold(f64::NEG_INFINITY, f64::max);
         hottest <= limit.temperature - settings.off_limits
     });
-    let mut within_limits = rest_within && within(&way);
+    let mut within_limits = rest_within && way.keeps_limits(station);
     if within_limits && !limits(station).is_empty() {
         let segments = Timeline::after_last_burn(model, station, burn.start);
-        let plan = Plan::new(model, station_index, settings.off_limits);
         let deciding = plan.deciding(model, station, |of| matches!(of, LevelOf::Limit(_)), false);
         let soak = Pass::through(
             model,
@@ -101,9 +100,8 @@ pub(super) fn steady(model: &Model, station_index: usize, grid: &Grid, settings:
             stretch(segments, Some(&rest), deciding),
             |_| {},
         )?;
-        within_limits = within(&soak);
+        within_limits = soak.keeps_limits(station);
     }
-    debug_assert!(way.peak(Quantity::Place(Place::HotFace)).is_some());
     Ok(Steady::At(SteadyState {
         hot_face: rest[0],
         outer_face: rest[last],

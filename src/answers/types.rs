@@ -2,7 +2,9 @@
 //!
 //! Plain SI numbers: temperatures in kelvin, times in seconds from the start of the profile, areas per hot face, as `RESULTS` lists them.
 
-use crate::model::{JoulesPerSquareMetre, Kelvin, KelvinDifference, LimitKind, LimitOrigin, Metres, PhaseKind, Seconds, WattsPerSquareMetre};
+pub use crate::run::TraceRow;
+
+use crate::model::{JoulesPerSquareMetre, Kelvin, KelvinDifference, LimitKind, LimitOrigin, Metres, PhaseKind, Seconds};
 
 /// How the case stands, worst first.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -367,23 +369,6 @@ pub enum Finding {
         /// The estimate.
         estimated_error: KelvinDifference,
     },
-}
-
-/// One row of a trace: everything drawn against time at one station.
-#[derive(Clone, Debug, PartialEq)]
-pub struct TraceRow {
-    /// The clock.
-    pub time: Seconds,
-    /// The phase it belongs to; at a change, there are two rows, the ending phase first.
-    pub phase: PhaseKind,
-    /// Hot face, then each boundary's inner and outer side (equal at a perfect joint), then the outer face, K.
-    pub faces: Vec<Kelvin>,
-    /// Each probe's reading and the wall's true temperature there, K.
-    pub probes: Vec<(Kelvin, Kelvin)>,
-    /// Heat into the wall over the hot face.
-    pub flux_in: WattsPerSquareMetre,
-    /// Heat out over the outer face, per area of that face; of a bar over its sides and far end, per section at the heated end.
-    pub flux_out: WattsPerSquareMetre,
 }
 
 /// A temperature profile through the wall at one time; a joint with a resistance gives two points of equal depth.

@@ -8,6 +8,6 @@ mod watch;
 
 pub use course::{Course, Moment, RunError};
 pub use decide::{LastPhase, Rest, SAME};
-pub use record::{Recorder, Row};
+pub use record::{Recorder, TraceRow};
 pub use timeline::{LONGEST, Segment, Timeline};
 pub use watch::{Crossings, Level, Peak, Quantity, Watcher};

@@ -3,18 +3,18 @@
 use super::Moment;
 use crate::model::{Kelvin, Metres, PhaseKind, Seconds, WattsPerSquareMetre};
 
-/// Everything of one wall at one time.
+/// One row of a trace: everything drawn against time at one station.
 #[derive(Clone, Debug, PartialEq)]
-pub struct Row {
+pub struct TraceRow {
     /// The clock.
-    pub clock: Seconds,
-    /// In which kind of phase.
-    pub kind: PhaseKind,
-    /// Hot face, both sides of each boundary, outer face.
+    pub time: Seconds,
+    /// The phase it belongs to; at a change, there may be two rows, the ending phase first.
+    pub phase: PhaseKind,
+    /// Hot face, then each boundary's inner and outer side (equal at a perfect joint), then the outer face, K.
     pub faces: Vec<Kelvin>,
-    /// Reading and true temperature of each probe.
+    /// Each probe's reading and the wall's true temperature there, K.
     pub probes: Vec<(Kelvin, Kelvin)>,
-    /// Into the hot face.
+    /// Heat into the wall over the hot face.
     pub flux_in: WattsPerSquareMetre,
     /// Out of the outer face, per its area; of a bar out of its sides and far end, per section at the heated end.
     pub flux_out: WattsPerSquareMetre,
@@ -30,7 +30,7 @@ pub struct Recorder {
     profile_times: Vec<Seconds>,
     next_profile: usize,
     /// The rows.
-    pub rows: Vec<Row>,
+    pub rows: Vec<TraceRow>,
     /// Whole profiles: clock, and depth and temperature of each node.
     pub profiles: Vec<(Seconds, Vec<(Metres, Kelvin)>)>,
 }
@@ -60,8 +60,8 @@ impl Recorder {
                 break;
             }
             // The asked clock itself, not what θ makes of it.
-            self.rows.push(Row {
-                clock: time,
+            self.rows.push(TraceRow {
+                time,
                 ..row(moment, moment.theta(time))
             });
             self.next += 1;
@@ -84,7 +84,7 @@ impl Recorder {
     }
 }
 
-fn row(moment: &Moment<'_>, theta: f64) -> Row {
+fn row(moment: &Moment<'_>, theta: f64) -> TraceRow {
     let map = moment.map();
     let faces = map
         .layers
@@ -96,9 +96,9 @@ fn row(moment: &Moment<'_>, theta: f64) -> Row {
         .map(|probe| (moment.reading(probe, theta), moment.truth(probe, theta)))
         .collect();
     let (flux_in, flux_out) = moment.fluxes(theta);
-    Row {
-        clock: moment.clock(theta),
-        kind: moment.kind(),
+    TraceRow {
+        time: moment.clock(theta),
+        phase: moment.kind(),
         faces,
         probes,
         flux_in,

@@ -77,7 +77,7 @@ pub struct Integrator<const L: usize> {
     pub followers: Vec<Slot<L>>,
     /// What it has cost so far.
     pub effort: Effort,
-    /// The last step length as a share of its phase, and the member's phase length: what a phase that starts smoothly goes on with.
+    /// Length in time of the step that the controller wanted next: what a phase that starts without a jump goes on from.
     last_step: Option<f64>,
     stages: [Vec<Slot<L>>; STAGES],
     follower_stages: [Vec<Slot<L>>; STAGES],

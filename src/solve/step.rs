@@ -94,6 +94,6 @@ fn dense_slope<const L: usize>(before: Slot<L>, after: Slot<L>, stages: &[Vec<Sl
         let d = coefficients(stages, index, l);
         let curve = d[0] + theta * (d[1] + theta * d[2]);
         let inner = after[l] + rest * curve;
-        after[l] - before[l] + inner - after[l] + theta * (-curve + rest * (d[1] + 2.0 * theta * d[2]))
+        inner - before[l] + theta * (-curve + rest * (d[1] + 2.0 * theta * d[2]))
     })
 }

@@ -411,11 +411,6 @@ impl<const L: usize> Wall<L> {
             })
     }
 
-    /// Whether the outer face is held at a temperature.
-    pub fn is_held(&self) -> bool {
-        self.held
-    }
-
     /// Heat into the hot face at its temperature, at a share of the stretch.
     #[inline]
     fn hot_flux(&self, member: usize, share: f64, face: Kelvin) -> FluxAndSlope {

@@ -332,7 +332,7 @@ fn a_line_of_temperatures_evens_out_as_the_series_says() -> Outcome {
         let within = if expected[0] < 0.05 { 0.01 * 300.0 } else { PROMISE };
         let found = [row.faces[0], row.probes[0].1, row.probes[1].1, row.probes[2].1, row.faces[1]];
         for (found, expected) in found.iter().zip(&expected[1..]) {
-            assert!((found - expected).abs() < within, "at {} s {found}, not {expected}", row.clock);
+            assert!((found - expected).abs() < within, "at {} s {found}, not {expected}", row.time);
         }
     }
     Ok(())
